@@ -1,0 +1,9 @@
+// The one include of every test: Catch2, whichever of its two generations is installed, with Approx in reach.
+#pragma once
+
+#if __has_include(<catch2/catch_all.hpp>)
+#include <catch2/catch_all.hpp>
+using Catch::Approx;
+#else
+#include <catch2/catch.hpp>
+#endif
