@@ -1,8 +1,9 @@
 // A scenario: everything that fixes a result.
 //
-// The structs hold each value exactly as the scenario text gives it, in the units of its key, so that text, link,
-// screen and struct can be turned into one another without changing a bit. Units other than SI are in the name.
-// Defaults stand here and nowhere else; range, unit and meaning of every field are in engine/scenario/fields.h.
+// The structs hold each value exactly as the scenario text gives it, in the units of its key, so that text,
+// link, screen and struct can be turned into one another without changing a bit. Units other than SI are in
+// the name. Defaults stand here and nowhere else; range, unit and meaning of every field are in
+// engine/scenario/fields.h.
 //
 // Frame: x right, y up, heading counter-clockwise from x. Left is positive for lateral offsets and turns.
 #pragma once
@@ -57,7 +58,8 @@ enum class GainUnit { per_loop, per_second };
 
 struct Controller {
   double base_pct = 40.0;
-  double kp = 0.3;  // steer as fraction of full command, per error as fraction of full scale (per mm for a bar)
+  double kp =
+      0.3;  // steer as fraction of full command, per error as fraction of full scale (per mm for a bar)
   double ki = 0.0;
   double kd = 0.0;
   GainUnit gains = GainUnit::per_loop;
@@ -67,8 +69,8 @@ struct Controller {
   double ease = 0.0;  // base falls to base (1 - ease |e|)
 };
 
-/// One exact piece of a course: a straight (straight_mm > 0), or a bend of radius_mm through turn_deg (+ left).
-/// A radius of 0 is a sharp corner.
+/// One exact piece of a course: a straight (straight_mm > 0), or a bend of radius_mm through turn_deg (+
+/// left). A radius of 0 is a sharp corner.
 struct Piece {
   std::optional<double> straight_mm;
   std::optional<double> radius_mm;
@@ -91,15 +93,15 @@ struct Course {
   bool closed = true;
   Point start_mm;  // with pieces: where they begin. With points: start and heading come from the points
   double heading_deg = 0.0;
-  std::vector<Piece> pieces;      // either pieces ...
-  std::vector<Point> points_mm;   // ... or drawn points
-  std::vector<int> corners;       // indices into points_mm that stay sharp
-  std::vector<Stretch> gaps_mm;   // where the line is missing
+  std::vector<Piece> pieces;     // either pieces ...
+  std::vector<Point> points_mm;  // ... or drawn points
+  std::vector<int> corners;      // indices into points_mm that stay sharp
+  std::vector<Stretch> gaps_mm;  // where the line is missing
 };
 
 struct FloorLook {
-  double texture_pct = 0.0;                      // standard deviation of brightness from place to place
-  double texture_mm = 80.0;                      // its correlation length
+  double texture_pct = 0.0;                       // standard deviation of brightness from place to place
+  double texture_mm = 80.0;                       // its correlation length
   std::vector<double> light_pct_per_m{0.0, 0.0};  // gradient along x, y, points of reading
   std::int64_t seed = 1;
 };
