@@ -1,0 +1,22 @@
+// Finding keys by name, and the nearest one to a name that is none.
+#pragma once
+
+#include <string>
+#include <string_view>
+
+namespace lw {
+
+/// Whether the text may have [name].
+bool is_section(std::string_view name);
+
+/// Whether `key` may stand in [section]; section "" is the top level.
+bool is_key(std::string_view section, std::string_view key);
+
+/// The closest of all "section.key" paths to a misspelt one, by edit distance (Levenshtein 1966); the same
+/// key in another section is closest of all. Empty when none is close.
+std::string nearest_path(std::string_view path);
+
+/// "unknown key", with the nearest path where there is one.
+std::string unknown_key_rule(std::string_view path);
+
+}  // namespace lw
