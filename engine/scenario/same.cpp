@@ -1,5 +1,6 @@
 #include "engine/scenario/same.h"
 
+#include "engine/numeric/hash.h"
 #include "engine/scenario/fields.h"
 
 namespace lw {
@@ -57,17 +58,12 @@ std::vector<std::string> field_bytes(const Scenario& scenario) {
 
 bool same(const Scenario& a, const Scenario& b) { return field_bytes(a) == field_bytes(b); }
 
-std::uint64_t fnv1a(const std::string& bytes, std::uint64_t hash) {
-  for (const char c : bytes) hash = (hash ^ static_cast<unsigned char>(c)) * 0x100000001b3u;
-  return hash;
-}
-
 std::uint64_t content_hash(const Scenario& scenario) {
-  std::uint64_t hash = fnv1a("");
+  std::uint64_t hash = fnv_start;
   each_field(scenario, [&](const FieldInfo& info, const auto& value) {
-    std::string bytes = path_of(info) + '=';
+    std::string bytes;
     append(bytes, value);
-    hash = fnv1a(bytes, hash);
+    hash = fnv_text(fnv_text(hash, path_of(info)), bytes);
   });
   return hash;
 }

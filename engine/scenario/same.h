@@ -18,10 +18,7 @@ std::vector<std::string> field_bytes(const Scenario& scenario);
 
 bool same(const Scenario& a, const Scenario& b);
 
-/// FNV-1a, 64 bits (Fowler, Noll, Vo; draft-eastlake-fnv), of `bytes`, going on from `hash`.
-std::uint64_t fnv1a(const std::string& bytes, std::uint64_t hash = 0xcbf29ce484222325u);
-
-/// fnv1a over the path and the bytes of every field.
+/// FNV-1a 64 (engine/numeric/hash.h) over the path and the bytes of every field.
 std::uint64_t content_hash(const Scenario& scenario);
 
 }  // namespace lw
