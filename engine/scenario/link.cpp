@@ -63,7 +63,7 @@ Result<std::string> from_base64url(std::string_view text) {
     const std::size_t digit = alphabet.find(text[i]);
     if (digit == std::string_view::npos)
       return broken("character " + std::to_string(i + 1) + " of its data, " +
-                    quoted(clipped(text.substr(i, 1))) + ", is not base64url");
+                    in_quotes(clipped(text.substr(i, 1))) + ", is not base64url");
     held = held << 6 | static_cast<std::uint32_t>(digit);
     bits += 6;
     if (bits < 8) continue;
@@ -139,7 +139,7 @@ Result<Scenario> decode_link(std::string_view link) {
                   std::to_string(most_link_bytes) + " are read");
   const std::string_view version = version_of(fragment);
   if (version.empty())
-    return broken("not a link of linewright: behind '#' it would begin with " + quoted(link_mark));
+    return broken("not a link of linewright: behind '#' it would begin with " + in_quotes(link_mark));
   if (fragment.substr(0, link_mark.size()) != link_mark)
     return broken("made for another linewright: version " + std::string(version) + ", and this one reads 1");
   const auto packed = from_base64url(fragment.substr(link_mark.size()));

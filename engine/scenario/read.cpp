@@ -81,7 +81,7 @@ std::string place(std::string_view name, int line) {
 
 // What a value is, in a message.
 std::string shown(const toml::node& node) {
-  if (const auto* text = node.as_string()) return quoted(clipped(text->get()));
+  if (const auto* text = node.as_string()) return in_quotes(clipped(text->get()));
   if (const auto* whole = node.as_integer()) return std::to_string(whole->get());
   if (const auto* number = node.as_floating_point()) return float_text(number->get());
   if (const auto* truth = node.as_boolean()) return truth->get() ? "true" : "false";
@@ -159,7 +159,7 @@ MaybeMisread take(const toml::node& node, E& value) {
   std::string rule;
   for (std::size_t i = 0; i < names.size(); ++i) {
     if (i > 0) rule += i + 1 == names.size() ? " or " : ", ";
-    rule += quoted(names[i]);
+    rule += in_quotes(names[i]);
   }
   return wanted(node, rule + " is wanted");
 }
@@ -202,7 +202,8 @@ MaybeMisread take(const toml::node& node, Piece& piece) {
     if (found) found->part = '.' + std::string(info.key) + found->part;
   });
   if (found || known == table->size()) return found;
-  for (const auto& [key, inner] : *table) {
+  for (const auto& entry : *table) {
+    const toml::key& key = entry.first;
     bool is_known = false;
     each_piece_field(piece, [&](const FieldInfo& info, auto&) { is_known |= info.key == key.str(); });
     if (!is_known)
@@ -253,7 +254,7 @@ MaybeMisread take(const toml::node& node, std::vector<Spread>& spreads) {
     Spread spread;
     spread.key = std::string(entry.first->str());
     if (auto misread = take_spread(*entry.second, spread)) {
-      misread->part = '.' + quoted(clipped(spread.key)) + misread->part;
+      misread->part = '.' + in_quotes(clipped(spread.key)) + misread->part;
       return misread;
     }
     spreads.push_back(spread);
@@ -298,12 +299,12 @@ Unknown first_unknown(const toml::table& root) {
 // ------------------------------------------------------------------------------------------------
 
 std::optional<Error> check_format(const toml::table& root, std::string_view name) {
-  const std::string expected = quoted("linewright " + std::to_string(format_version));
+  const std::string expected = in_quotes("linewright " + std::to_string(format_version));
   const toml::node* node = root.get("format");
   if (!node)
     return Error{std::string(name), "format", "missing; a scenario begins with format = " + expected};
   const auto* text = node->as_string();
-  if (text && quoted(text->get()) == expected) return {};
+  if (text && in_quotes(text->get()) == expected) return {};
   const Error error{place(name, line_of(*node)), "format = " + shown(*node), ""};
   constexpr std::string_view mark = "linewright ";
   const std::string_view rest =
@@ -416,7 +417,7 @@ Result<Scenario> set_key(const Scenario& scenario, std::string_view path, std::s
   if (!bare && value.find_first_of("\r\n") != std::string_view::npos)
     return Error{"", assignment, "one value on one line is wanted"};
   std::string text = section.empty() ? "" : '[' + section + "]\n";
-  text += key + " = " + (bare ? quoted(value) : std::string(value));
+  text += key + " = " + (bare ? in_quotes(value) : std::string(value));
   const auto root = parse(text, "");
   if (!root) return Error{"", assignment, root.error().why};
   Scenario changed = scenario;

@@ -32,7 +32,7 @@ Fault at_entry(Fault fault, std::size_t index, std::string_view rest = "") {
 // A tolerance is known by the number it spreads, not by its place in the list.
 Fault at_spread(Fault fault, const Spread& spread, std::size_t index) {
   fault.entry = static_cast<int>(index);
-  fault.path += '.' + quoted(clipped(spread.key));
+  fault.path += '.' + in_quotes(clipped(spread.key));
   return fault;
 }
 

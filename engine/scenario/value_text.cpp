@@ -24,7 +24,7 @@ std::string float_text(double value) {
   return text;
 }
 
-std::string quoted(std::string_view text) {
+std::string in_quotes(std::string_view text) {
   std::string out = "\"";
   for (const char c : text) {
     const auto code = static_cast<unsigned char>(c);

@@ -15,8 +15,9 @@ std::string number_text(double value);
 /// number_text() with a point or exponent always there: "40.0".
 std::string float_text(double value);
 
-/// A TOML basic string with its quotes: control characters, quotes and backslashes escaped.
-std::string quoted(std::string_view text);
+/// A TOML basic string with its quotes: control characters, quotes and backslashes escaped. (Not called
+/// quoted: for a std::string that finds std::quoted as well.)
+std::string in_quotes(std::string_view text);
 
 /// Text for a message: control characters become '?', and what is longer than `most` bytes ends in "...",
 /// never inside a UTF-8 character.

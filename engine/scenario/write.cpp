@@ -23,10 +23,10 @@ std::string text_of(double value, Style style) {
 std::string text_of(std::int64_t value, Style) { return std::to_string(value); }
 std::string text_of(int value, Style) { return std::to_string(value); }
 std::string text_of(bool value, Style) { return value ? "true" : "false"; }
-std::string text_of(const std::string& value, Style) { return quoted(value); }
+std::string text_of(const std::string& value, Style) { return in_quotes(value); }
 template <NamedEnum E>
 std::string text_of(E value, Style) {
-  return quoted(name_of(value));
+  return in_quotes(name_of(value));
 }
 
 std::string pair_text(double first, double second, Style style) {
@@ -48,7 +48,7 @@ std::string text_of(const Piece& piece, Style style) {
 }
 
 std::string spread_text(const Spread& spread, Style style) {
-  std::string text = quoted(spread.key);
+  std::string text = in_quotes(spread.key);
   ((text += style.equals()) += '{') += style.pad();
   ((text += name_of(spread.kind)) += style.equals()) += text_of(spread.amount, style);
   return (text += style.pad()) += '}';
