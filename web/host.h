@@ -1,8 +1,8 @@
-// What the application asks of the place it runs in. Two implementations: web/page/host_browser.cpp in the page,
-// and web/page/host_null.cpp in the native tests, which only writes down what was asked (host_null.h).
+// What the application asks of the place it runs in. Two implementations: web/page/host_browser.cpp in the
+// page, and web/page/host_null.cpp in the native tests, which only writes down what was asked (host_null.h).
 //
-// None of these fails loudly: a browser may refuse to store (private windows, full disk), to reach the clipboard
-// or to save, and the page has to go on. Where the answer matters it is returned.
+// None of these fails loudly: a browser may refuse to store (private windows, full disk), to reach the
+// clipboard or to save, and the page has to go on. Where the answer matters it is returned.
 #pragma once
 
 #include <string>
@@ -10,11 +10,13 @@
 
 namespace lw::host {
 
-/// Lets the user keep `bytes` as a file; `name` is the suggested name, `type` a media type such as "text/csv".
+/// Lets the user keep `bytes` as a file; `name` is the suggested name, `type` a media type such as
+/// "text/csv".
 void save_file(std::string_view name, std::string_view bytes, std::string_view type);
 
-/// Lets the user choose a file; it arrives by app::file_opened(), or never. `accept` as in HTML (".toml,.csv").
-/// Call it in the frame in which the button was released: browsers open the dialog only right after an input.
+/// Lets the user choose a file; it arrives by app::file_opened(), or never. `accept` as in HTML
+/// (".toml,.csv"). Call it in the frame in which the button was released: browsers open the dialog only right
+/// after an input.
 void choose_file(std::string_view accept);
 
 /// Puts text on the clipboard. Within a frame caused by an input, for the same reason.
@@ -35,8 +37,13 @@ void set_fragment(std::string_view fragment);
 /// Seconds since some fixed moment, never going back; of microsecond to millisecond resolution.
 double seconds();
 
-/// Hands `request` to a worker of its own, where worker_app.h answers it piece by piece beside the page. `job` is
-/// the caller's number for it, unused so far. Messages arrive by app::job_message().
+/// Puts an image of width x height pixels (row by row from the top, RGBA, 4 bytes a pixel, straight alpha) on
+/// the graphics side, in place of image `old` (0: none). Returns its number, for ImGui::Image and
+/// ImDrawList::AddImage. Sampled bilinearly, edges clamped. Width and height 1 to 4096.
+unsigned put_image(unsigned old, int width, int height, const unsigned char* rgba);
+
+/// Hands `request` to a worker of its own, where worker_app.h answers it piece by piece beside the page.
+/// `job` is the caller's number for it, unused so far. Messages arrive by app::job_message().
 void start_job(int job, std::string_view request);
 
 /// Ends a job at once, wherever it is; no message of it arrives after this. Unknown numbers are ignored.

@@ -1,8 +1,8 @@
 // What the page calls: the application behind the canvas, one function for each thing that can happen to it.
 //
-// web/page/main.cpp owns the window, the frame loop and Dear ImGui; it calls these. The application draws with
-// Dear ImGui inside frame() and asks the browser for things through web/host.h. Nothing in here knows a browser,
-// so that the tests call the same functions natively (tests/web/hand.h).
+// web/page/main.cpp owns the window, the frame loop and Dear ImGui; it calls these. The application draws
+// with Dear ImGui inside frame() and asks the browser for things through web/host.h. Nothing in here knows a
+// browser, so that the tests call the same functions natively (tests/web/hand.h).
 //
 // Lengths are CSS pixels, the unit of ImGui::GetIO().DisplaySize; x right, y down, from the canvas's corner.
 // Text is UTF-8; a view is valid during the call alone.
@@ -16,16 +16,19 @@ namespace lw::app {
 void start();
 
 /// Draws one frame, between ImGui::NewFrame() and ImGui::Render(). Returns true when the next frame will look
-/// different without any event (playback, an animation): the page then draws again at the screen's next refresh.
-/// After an event (mouse, key, touch, file, job, resize) the page draws a few frames by itself.
+/// different without any event (playback, an animation): the page then draws again at the screen's next
+/// refresh. After an event (mouse, key, touch, file, job, resize) the page draws a few frames by itself.
 bool frame();
 
-/// The text behind # in the address, without #: at the start (when there is one) and when it changes later by a
-/// link opened in the same tab. Not called for what host::set_fragment() wrote.
+/// The text behind # in the address, without #: at the start (when there is one) and when it changes later by
+/// a link opened in the same tab. Not called for what host::set_fragment() wrote.
 void fragment_changed(std::string_view fragment);
 
 /// A file that was chosen after host::choose_file(), or dropped on the page. `name` has no folder.
 void file_opened(std::string_view name, std::string_view bytes);
+
+/// A file that could not be taken (too long, unreadable), and why, as a sentence for the user.
+void file_refused(std::string_view name, std::string_view why);
 
 /// Text pasted while no text field has the keyboard, such as a link or a whole scenario.
 void text_pasted(std::string_view text);

@@ -1,8 +1,9 @@
 // What runs in a worker, beside the page: a study (many drives, a search) as a sequence of short slices.
 //
-// The page starts a worker for each job, hands it the request, and calls step() until it says that it is over.
-// Between slices messages go out; cancelling ends the worker wherever it is. The engine alone is linked here, no
-// Dear ImGui. Request and messages are bytes whose meaning is agreed between the two ends, JSON for instance.
+// The page starts a worker for each job, hands it the request, and calls step() until it says that it is
+// over. Between slices messages go out; cancelling ends the worker wherever it is. The engine alone is linked
+// here, no Dear ImGui. Request and messages are bytes whose meaning is agreed between the two ends, JSON for
+// instance.
 #pragma once
 
 #include <functional>
