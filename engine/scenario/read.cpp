@@ -4,6 +4,7 @@
 
 #include "engine/scenario/fields.h"
 #include "engine/scenario/keys.h"
+#include "engine/scenario/numbers.h"
 #include "engine/scenario/text.h"
 #include "engine/scenario/validate.h"
 #include "engine/scenario/value_text.h"
@@ -398,28 +399,50 @@ Result<Scenario> read(std::string_view text, std::string_view name) {
   return scenario;
 }
 
+namespace {
+
+// "[section]" and "key = value", the one assignment of --set as a text of its own.
+Result<toml::table> parse_assignment(std::string_view section, std::string_view key, std::string_view value,
+                                     const std::string& assignment) {
+  if (value.find_first_of("\r\n") != std::string_view::npos)
+    return Error{"", assignment, "one value on one line is wanted"};
+  std::string text = section.empty() ? "" : '[' + std::string(section) + "]\n";
+  text += std::string(key) + " = " + std::string(value);
+  auto root = parse(text, "");
+  if (!root) return Error{"", assignment, root.error().why};
+  return root;
+}
+
+// One entry of a list of numbers: "sensors.gain[1]".
+Result<Scenario> set_entry(Scenario changed, std::string_view path, std::string_view value,
+                           const std::string& assignment) {
+  double* number = find_number(changed, path);
+  if (!number) return Error{"", clipped(path), unknown_key_rule(path.substr(0, path.find('[')))};
+  const auto root = parse_assignment("", "entry", value, assignment);
+  if (!root) return root.error();
+  if (auto misread = take(*root->get("entry"), *number)) return Error{"", assignment, misread->rule};
+  if (const auto fault = find_fault_in(changed, path.substr(0, path.find('[')))) return error_of(*fault);
+  return changed;
+}
+
+}  // namespace
+
 Result<Scenario> set_key(const Scenario& scenario, std::string_view path, std::string_view value) {
-  bool known = false;
+  const std::string assignment = std::string(clipped(path)) + " = " + clipped(value);
+  if (!path.empty() && path.back() == ']') return set_entry(scenario, path, value, assignment);
+  std::optional<FieldInfo> field;
   bool word = false;  // text that may go without quotes
-  std::string section;
-  std::string key;
   each_field(scenario, [&](const FieldInfo& info, const auto& old) {
     using T = std::decay_t<decltype(old)>;
     if (path_of(info) != path) return;
-    known = true;
+    field = info;
     word = std::is_same_v<T, std::string> || NamedEnum<T> || std::is_same_v<T, std::optional<Outcome>>;
-    section = std::string(info.section);
-    key = std::string(info.key);
   });
-  if (!known) return Error{"", clipped(path), unknown_key_rule(path)};
-  const std::string assignment = std::string(path) + " = " + clipped(value);
+  if (!field) return Error{"", clipped(path), unknown_key_rule(path)};
   const bool bare = word && value.substr(0, 1) != "\"" && value.substr(0, 1) != "'";
-  if (!bare && value.find_first_of("\r\n") != std::string_view::npos)
-    return Error{"", assignment, "one value on one line is wanted"};
-  std::string text = section.empty() ? "" : '[' + section + "]\n";
-  text += key + " = " + (bare ? in_quotes(value) : std::string(value));
-  const auto root = parse(text, "");
-  if (!root) return Error{"", assignment, root.error().why};
+  const std::string written = bare ? in_quotes(value) : std::string(value);
+  const auto root = parse_assignment(field->section, field->key, written, assignment);
+  if (!root) return root.error();
   Scenario changed = scenario;
   if (auto error = merge(*root, "", changed)) return Error{"", error->what, error->why};
   if (const auto fault = find_fault_in(changed, path)) return error_of(*fault);
