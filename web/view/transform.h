@@ -1,7 +1,7 @@
 // Between the floor and the screen: a window of the floor, seen from straight above.
 //
-// Floor: millimetres, x right, y up. Screen: CSS pixels, x right, y down, from the canvas's corner. A view is the
-// point of the floor in the middle of the frame and one scale for both directions, so
+// Floor: millimetres, x right, y up. Screen: CSS pixels, x right, y down, from the canvas's corner. A view is
+// the point of the floor in the middle of the frame and one scale for both directions, so
 //   x_px = middle_x_px + scale (x_mm - centre_x_mm),  y_px = middle_y_px - scale (y_mm - centre_y_mm).
 #pragma once
 
@@ -45,8 +45,8 @@ View panned(View view, float dx, float dy);
 /// Nearer by `factor` (> 1), the floor under `about` staying where it is; the scale is held to its range.
 View zoomed(View view, Pixel about, double factor);
 
-/// The whole box in the frame with `margin` pixels kept free on every side (less where the frame is small). An
-/// empty box gives a metre around the origin.
+/// The whole box in the frame with `margin` pixels kept free on every side (less where the frame is small).
+/// An empty box gives a metre around the origin.
 View fitted(Frame frame, const Box& box, float margin);
 
 /// The same middle and scale in another frame, as when the window is resized.
