@@ -53,7 +53,8 @@ TEST_CASE("joints lie where the engine's centreline passes") {
     const CoursePoint p = point_at(line, 1e-3 * joint.s_mm);
     CHECK(1e3 * p.x == Approx(joint.at.x_mm).margin(1e-3));
     CHECK(1e3 * p.y == Approx(joint.at.y_mm).margin(1e-3));
-    CHECK(p.tangent_x == Approx(std::cos(joint.heading_deg * std::numbers::pi / 180)).margin(1e-5));
+    // A joint inside a sample: within pitch times curvature (engine/course/centreline.h).
+    CHECK(p.tangent_x == Approx(std::cos(joint.heading_deg * std::numbers::pi / 180)).margin(3e-3));
   }
 }
 
