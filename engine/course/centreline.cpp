@@ -13,12 +13,12 @@ Result<bool> check_gaps(const Course& course, double length) {
   for (std::size_t i = 0; i < course.gaps_mm.size(); ++i) {
     const Stretch& gap = course.gaps_mm[i];
     const std::string where = place_text("course.gaps_mm", i);
-    const std::string what = "[" + number_text(gap.from_mm) + ", " + number_text(gap.to_mm) + "]";
+    const std::string what = "[" + rounded_text(gap.from_mm) + ", " + rounded_text(gap.to_mm) + "]";
     if (!std::isfinite(gap.from_mm) || !std::isfinite(gap.to_mm))
       return Error{where, what, "must be finite numbers"};
     if (gap.from_mm >= gap.to_mm) return Error{where, what, "a gap must end after it begins"};
     if (gap.from_mm < 0.0 || gap.to_mm > length_mm + 1e-6)
-      return Error{where, what, "a gap must lie on the course, from 0 to " + number_text(length_mm) + " mm"};
+      return Error{where, what, "a gap must lie on the course, from 0 to " + rounded_text(length_mm) + " mm"};
     for (std::size_t j = 0; j < i; ++j) {
       const Stretch& other = course.gaps_mm[j];
       if (gap.from_mm < other.to_mm && other.from_mm < gap.to_mm)

@@ -55,7 +55,7 @@ std::string piece_text(const Piece& piece) {
   const auto add = [&text](const char* key, const std::optional<double>& value) {
     if (!value) return;
     if (!text.empty()) text += ", ";
-    text += key + (" = " + number_text(*value));
+    text += key + (" = " + rounded_text(*value));
   };
   add("straight_mm", piece.straight_mm);
   add("radius_mm", piece.radius_mm);
@@ -183,10 +183,10 @@ void absorb_residual(Centreline& line, Vector gap, double twist) {
 Result<bool> check_closing(const Course& course, const Laid& laid, Vector gap, double twist_deg) {
   const double gap_mm = length_of(gap) / mm;
   if (gap_mm <= gap_most / mm && std::fabs(twist_deg) <= twist_most_deg) return true;
-  const std::string what = "ends " + number_text(gap_mm) + " mm from its start (" + number_text(gap.x / mm) +
-                           " mm in x, " + number_text(gap.y / mm) + " mm in y) and " +
-                           number_text(twist_deg) + " degrees off its heading, after " +
-                           number_text(laid.length / mm) + " mm in " + std::to_string(course.pieces.size()) +
+  const std::string what = "ends " + rounded_text(gap_mm) + " mm from its start (" + rounded_text(gap.x / mm) +
+                           " mm in x, " + rounded_text(gap.y / mm) + " mm in y) and " +
+                           rounded_text(twist_deg) + " degrees off its heading, after " +
+                           rounded_text(laid.length / mm) + " mm in " + std::to_string(course.pieces.size()) +
                            " pieces";
   return Error{"course.pieces", what,
                "a closed course must end where it starts, within 0.5 mm and 0.1 degrees"};
@@ -223,7 +223,7 @@ std::vector<CourseSection> sections_of_pieces(const Laid& laid) {
 
 Result<Centreline> lay_pieces(const Course& course) {
   for (const double v : {course.start_mm.x_mm, course.start_mm.y_mm, course.heading_deg})
-    if (!std::isfinite(v)) return Error{"course.start_mm", number_text(v), "must be a finite number"};
+    if (!std::isfinite(v)) return Error{"course.start_mm", rounded_text(v), "must be a finite number"};
   const Result<Laid> laid = lay(course);
   if (!laid) return laid.error();
   Result<Centreline> line = blank_centreline(laid->length, course.closed);

@@ -6,7 +6,7 @@
 
 namespace lw {
 
-std::string number_text(double value) {
+std::string rounded_text(double value) {
   char text[32];
   std::snprintf(text, sizeof text, "%.6g", value);
   return text;
@@ -17,7 +17,7 @@ std::string place_text(const char* list, std::size_t index) {
 }
 
 Result<Centreline> blank_centreline(double length, bool closed) {
-  const std::string what = "the course is " + number_text(length * 1e3) + " mm long";
+  const std::string what = "the course is " + rounded_text(length * 1e3) + " mm long";
   if (!(length >= course_length_least)) return Error{"course", what, "it must be at least 10 mm long"};
   if (!(length <= course_length_most)) return Error{"course", what, "it must be at most 1 km long"};
   const double steps = std::ceil(length / std::max(pitch_aim, length / (nodes_most - 1.0)));

@@ -18,7 +18,7 @@ inline constexpr double radius_least = 1e-3;         // m; also never below the 
 Result<Centreline> blank_centreline(double length, bool closed);
 
 /// A number as a message shows it, six significant digits at most.
-std::string number_text(double value);
+std::string rounded_text(double value);
 
 /// "course.pieces[3]": the third key of a list, counted from 0 as in the scenario text.
 std::string place_text(const char* list, std::size_t index);
