@@ -8,6 +8,10 @@
 namespace lw {
 namespace {
 
+std::string_view key_of(std::string_view path) { return path.substr(path.find_last_of('.') + 1); }
+
+}  // namespace
+
 std::size_t edits_between(std::string_view a, std::string_view b) {
   std::vector<std::size_t> row(b.size() + 1);
   for (std::size_t k = 0; k <= b.size(); ++k) row[k] = k;
@@ -22,10 +26,6 @@ std::size_t edits_between(std::string_view a, std::string_view b) {
   }
   return row[b.size()];
 }
-
-std::string_view key_of(std::string_view path) { return path.substr(path.find_last_of('.') + 1); }
-
-}  // namespace
 
 bool is_section(std::string_view name) {
   const Scenario scenario;
