@@ -1,0 +1,41 @@
+// The commands, each a function from its options to an answer.
+#pragma once
+
+#include <string>
+#include <vector>
+
+#include "shell/answer.h"
+#include "shell/input.h"
+
+namespace lw::shell {
+
+struct DriveCall {
+  Input input;
+  std::string trace;       // file for the trace as CSV; empty = none
+  std::string trace_bits;  // file for the trace as bits, to compare two builds; empty = none
+};
+/// One drive and how it went.
+Answer drive_command(const DriveCall& call);
+
+struct CheckCall {
+  std::vector<std::string> from;
+  std::vector<std::string> set;  // for every one of them
+  std::string junit;             // file for the report as JUnit XML; empty = none
+};
+/// Drives every scenario and holds it to what its [expect] says.
+Answer check_command(const CheckCall& call);
+
+struct DescribeCall {
+  Input input;  // from empty: describes the keys themselves, with their defaults
+};
+/// The whole scenario with its defaults, gains in both units, and figures that follow from it.
+Answer describe_command(const DescribeCall& call);
+
+struct LinkCall {
+  Input input;
+  std::string page;  // address before '#'
+};
+/// A scenario file as a link, or a link as scenario text.
+Answer link_command(const LinkCall& call);
+
+}  // namespace lw::shell

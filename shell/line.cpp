@@ -1,0 +1,183 @@
+#include "shell/line.h"
+
+#include <CLI/CLI.hpp>
+#include <functional>
+
+#include "build_info.h"
+#include "engine/scenario/keys.h"
+#include "engine/scenario/value_text.h"
+#include "shell/commands.h"
+
+namespace lw::shell {
+namespace {
+
+constexpr const char* about =
+    "Drives line-guided vehicles on their courses before the real ones get there: one drive, what it was\n"
+    "expected to be, the whole description behind it, and links to pass it on.";
+constexpr const char* closing =
+    "SCENARIO is a file, a link (in quotes), or - for stdin. Exit code: 0 done, and for check every\n"
+    "expectation holds; 1 an expectation failed; 2 the input or the call is wrong, and stderr says what.\n"
+    "Every command has --help and --json.";
+constexpr const char* default_page = "linewright.html";
+
+/// A command with its options bound to the struct it is called with.
+struct Bound {
+  CLI::App* app;
+  std::function<Answer()> call;
+};
+
+struct Line {
+  CLI::App app{about, "linewright"};
+  std::vector<Bound> commands;
+  bool json = false;
+  DriveCall drive;
+  CheckCall check;
+  DescribeCall describe;
+  LinkCall link;
+};
+
+CLI::App* add_command(Line& line, const char* name, const char* does, std::function<Answer()> call) {
+  CLI::App* app = line.app.add_subcommand(name, does);
+  app->add_flag("--json", line.json, "One JSON object on stdout");
+  line.commands.push_back({app, std::move(call)});
+  return app;
+}
+
+void add_set(CLI::App* app, std::vector<std::string>& set) {
+  app->add_option("--set", set, "Override a key, such as controller.kp=0.25; may be given again")
+      ->type_name("KEY=VALUE")
+      ->allow_extra_args(false);
+}
+
+void add_input(CLI::App* app, Input& input) {
+  app->add_option("SCENARIO", input.from, "A file, a link, or - for stdin")->type_name("")->required();
+  add_set(app, input.set);
+}
+
+void add_file(CLI::App* app, const char* option, std::string& path, const char* does) {
+  app->add_option(option, path, does)->type_name("FILE");
+}
+
+void add_commands(Line& line) {
+  CLI::App* drive = add_command(line, "drive", "One drive: how it went, and why",
+                                [&line] { return drive_command(line.drive); });
+  add_input(drive, line.drive.input);
+  add_file(drive, "--trace", line.drive.trace, "Write every loop of the drive as CSV");
+  add_file(drive, "--trace-bits", line.drive.trace_bits, "Write every loop as exact bits, to compare builds");
+  drive->footer(
+      "Example: linewright drive scenarios/straight.toml --set controller.kp=0.2 --trace trace.csv");
+
+  CLI::App* check = add_command(line, "check", "Drive scenarios and hold each to its [expect]",
+                                [&line] { return check_command(line.check); });
+  check->add_option("SCENARIO", line.check.from, "Files, links, or - for stdin")->type_name("")->required();
+  add_set(check, line.check.set);
+  add_file(check, "--junit", line.check.junit, "Write the report as JUnit XML too");
+  check->footer("Example: linewright check scenarios/*.toml --junit report.xml");
+
+  CLI::App* describe = add_command(line, "describe", "The whole scenario with defaults and derived figures",
+                                   [&line] { return describe_command(line.describe); });
+  add_input(describe, line.describe.input);
+  describe->get_option("SCENARIO")->required(false);
+  describe->footer("Without a scenario: every key with its default, range, unit and meaning.");
+
+  CLI::App* link = add_command(line, "link", "A scenario file as a link, or a link as scenario text",
+                               [&line] { return link_command(line.link); });
+  add_input(link, line.link.input);
+  line.link.page = default_page;
+  link->add_option("--page", line.link.page, "Address of the page that the link opens")
+      ->type_name("ADDRESS")
+      ->capture_default_str();
+  link->footer("Example: linewright link scenarios/straight.toml > straight.link");
+}
+
+/// The candidate nearest to a wrong word, or nothing when none is near.
+std::string nearest(const std::string& word, const std::vector<std::string>& candidates) {
+  std::string found;
+  std::size_t least = std::max<std::size_t>(2, word.size() / 2) + 1;
+  for (const std::string& candidate : candidates) {
+    const std::size_t edits = edits_between(candidate, word.substr(0, 80));
+    if (edits >= least) continue;
+    least = edits;
+    found = candidate;
+  }
+  return found;
+}
+
+std::string with_hint(std::string message, const std::string& hint) {
+  return hint.empty() ? message : message + "; did you mean " + hint + '?';
+}
+
+/// Words behind the command that nothing takes: misspelt options, and too many scenarios.
+std::string complaint_about(const std::string& word, const CLI::App& command) {
+  const bool option = word.size() > 1 && word[0] == '-';
+  if (!option) return command.get_name() + " takes one scenario, and " + clipped(word) + " is one too many";
+  std::vector<std::string> names;
+  for (const CLI::Option* known : command.get_options()) {
+    for (const std::string& name : known->get_lnames()) names.push_back("--" + name);
+  }
+  const std::string bare = word.substr(0, word.find('='));
+  return with_hint("unknown option " + clipped(bare) + " of " + command.get_name(), nearest(bare, names));
+}
+
+int refuse(const std::string& message) {
+  complain(message);
+  return wrong_input;
+}
+
+int refuse_word(const Line& line, const std::string& word) {
+  std::vector<std::string> names{"--help", "--version"};
+  for (const Bound& command : line.commands) names.push_back(command.app->get_name());
+  const char* kind = word[0] == '-' ? "unknown option " : "unknown command ";
+  std::string hint = nearest(word, names);
+  if (hint.empty()) hint = "one of drive, check, describe, link";
+  return refuse(with_hint(kind + clipped(word), hint));
+}
+
+bool is_word(const Line& line, const std::string& word) {
+  bool known = word == "--help" || word == "-h" || word == "--version";
+  for (const Bound& command : line.commands) known = known || command.app->get_name() == word;
+  return known;
+}
+
+const Bound* chosen(const Line& line) {
+  for (const Bound& command : line.commands) {
+    if (command.app->parsed()) return &command;
+  }
+  return nullptr;
+}
+
+int refuse_parse(Line& line, const CLI::ParseError& error) {
+  const Bound* command = chosen(line);
+  const auto left = line.app.remaining(true);
+  if (command && !left.empty()) return refuse(complaint_about(left.front(), *command->app));
+  const std::string where = command ? command->app->get_name() + ": " : "";
+  return refuse(where + error.what() + "; see linewright " + (command ? command->app->get_name() + ' ' : "") +
+                "--help");
+}
+
+}  // namespace
+
+int run(int argc, const char* const* argv) {
+  Line line;
+  line.app.footer(closing);
+  line.app.set_version_flag("--version", build_info, "How this program was built");
+  add_commands(line);
+  const std::string first = argc > 1 ? argv[1] : "--help";
+  if (!is_word(line, first)) return refuse_word(line, first.empty() ? "\"\"" : first);
+  if (argc < 2) {
+    complain("a command is wanted\n\n" + line.app.help());
+    return wrong_input;
+  }
+  try {
+    line.app.parse(argc, argv);
+  } catch (const CLI::CallForVersion&) {
+    return put(std::string(build_info) + '\n') ? done : wrong_input;
+  } catch (const CLI::CallForHelp&) {
+    return put(line.app.help()) ? done : wrong_input;
+  } catch (const CLI::ParseError& error) {
+    return refuse_parse(line, error);
+  }
+  return print(chosen(line)->call(), line.json);
+}
+
+}  // namespace lw::shell
