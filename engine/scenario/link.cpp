@@ -15,6 +15,13 @@ constexpr std::string_view alphabet = "ABCDEFGHIJKLMNOPQRSTUVWXYZabcdefghijklmno
 
 Error broken(std::string why) { return Error{"link", "", std::move(why)}; }
 
+std::string foreign(char c, std::size_t place) {
+  const bool ascii =
+      static_cast<unsigned char>(c) < 0x80;  // a byte of a longer character cannot be shown alone
+  return "character " + std::to_string(place) + " of its data, " +
+         (ascii ? in_quotes(clipped({&c, 1})) : "a byte that is no letter") + ", is not base64url";
+}
+
 constexpr int raw_window = -15;  // zlib: no header or checksum around the stream, 32 KB window
 
 Bytef* bytes_of(std::string_view text) {
@@ -61,9 +68,7 @@ Result<std::string> from_base64url(std::string_view text) {
   int bits = 0;
   for (std::size_t i = 0; i < text.size(); ++i) {
     const std::size_t digit = alphabet.find(text[i]);
-    if (digit == std::string_view::npos)
-      return broken("character " + std::to_string(i + 1) + " of its data, " +
-                    in_quotes(clipped(text.substr(i, 1))) + ", is not base64url");
+    if (digit == std::string_view::npos) return broken(foreign(text[i], i + 1));
     held = held << 6 | static_cast<std::uint32_t>(digit);
     bits += 6;
     if (bits < 8) continue;
