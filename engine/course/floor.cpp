@@ -39,10 +39,10 @@ struct Work {
 
 Error too_large(const char* what, double count, double most, double spot_radius) {
   const double spot_mm = 2e3 * spot_radius * std::sqrt(count / most);
-  return {"sensors.spot_mm", number_text(2e3 * spot_radius),
-          "so fine a spot needs a floor of " + number_text(count * 1e-6) + " million " + what +
-              ", more than the " + number_text(most * 1e-6) + " million that can be held; a spot of " +
-              number_text(std::ceil(1.1 * spot_mm * 10.0) / 10.0) + " mm would do"};
+  return {"sensors.spot_mm", rounded_text(2e3 * spot_radius),
+          "so fine a spot needs a floor of " + rounded_text(count * 1e-6) + " million " + what +
+              ", more than the " + rounded_text(most * 1e-6) + " million that can be held; a spot of " +
+              rounded_text(std::ceil(1.1 * spot_mm * 10.0) / 10.0) + " mm would do"};
 }
 
 Result<Floor> blank_floor(const Work& work, double pitch) {
