@@ -183,9 +183,9 @@ void absorb_residual(Centreline& line, Vector gap, double twist) {
 Result<bool> check_closing(const Course& course, const Laid& laid, Vector gap, double twist_deg) {
   const double gap_mm = length_of(gap) / mm;
   if (gap_mm <= gap_most / mm && std::fabs(twist_deg) <= twist_most_deg) return true;
-  const std::string what = "ends " + rounded_text(gap_mm) + " mm from its start (" + rounded_text(gap.x / mm) +
-                           " mm in x, " + rounded_text(gap.y / mm) + " mm in y) and " +
-                           rounded_text(twist_deg) + " degrees off its heading, after " +
+  const std::string what = "ends " + rounded_text(gap_mm) + " mm from its start (" +
+                           rounded_text(gap.x / mm) + " mm in x, " + rounded_text(gap.y / mm) +
+                           " mm in y) and " + rounded_text(twist_deg) + " degrees off its heading, after " +
                            rounded_text(laid.length / mm) + " mm in " + std::to_string(course.pieces.size()) +
                            " pieces";
   return Error{"course.pieces", what,
