@@ -210,6 +210,13 @@ TEST_CASE("text that is not TOML is named with its line") {
     CHECK(error_with("\n" + bad).find("not valid TOML: ") != std::string::npos);
   }
   CHECK(error_with("grip 5").rfind("cart.toml:2: not valid TOML: ", 0) == 0);
+  // Letters beyond ASCII where only keys may stand; the end of the sentence is toml++'s.
+  for (const std::string bad :
+       {"\u00e9 = 1", "a \u00e9 = 1", "a = \u00e9", "a = [\u049a]", "\u3001", "\ufe00 = 2"}) {
+    INFO(bad);
+    CHECK(error_with(bad).rfind("cart.toml:2: not valid TOML: ", 0) == 0);
+  }
+  CHECK(error_with("note = \"\"\"\\\n  \u00dcber\"\"\"") == "no error");
   CHECK(error_with("title = \"\x80\"") == "cart.toml: not text in UTF-8");
   CHECK(error_with("title = \"a\x1b[2J\"").find('\x1b') == std::string::npos);
 }
