@@ -11,8 +11,16 @@ add_custom_command(OUTPUT ${typeface_source} DEPENDS ${typeface_files} ${CMAKE_S
                    COMMAND ${CMAKE_COMMAND} "-DOUT=${typeface_source}" "-DNAMES=typeface_regular;typeface_strong"
                            "-DFILES=${typeface_files}" -P ${CMAKE_SOURCE_DIR}/web/build/embed.cmake VERBATIM)
 
+# The scenarios that the page offers, likewise.
+set(library_source ${CMAKE_BINARY_DIR}/generated/library_data.cpp)
+file(GLOB library_files CONFIGURE_DEPENDS scenarios/*.toml)
+add_custom_command(OUTPUT ${library_source} DEPENDS ${library_files} ${CMAKE_SOURCE_DIR}/web/build/library.cmake
+                   COMMAND ${CMAKE_COMMAND} "-DOUT=${library_source}" "-DFILES=${library_files}"
+                           -P ${CMAKE_SOURCE_DIR}/web/build/library.cmake VERBATIM)
+
 file(GLOB page_ui_sources CONFIGURE_DEPENDS web/*.cpp web/panel/*.cpp web/view/*.cpp)
-add_library(page_ui STATIC ${page_ui_sources} web/page/typeface.cpp web/page/items.cpp ${typeface_source})
+add_library(page_ui STATIC ${page_ui_sources} web/page/typeface.cpp web/page/items.cpp ${typeface_source}
+            ${library_source})
 target_link_libraries(page_ui PRIVATE warnings PUBLIC engine imgui)
 
 if(NOT LINEWRIGHT_KIND STREQUAL "wasm")

@@ -99,6 +99,8 @@ struct Notice {
   double until = 0.0;  // on the clock of Desk::now
 };
 
+inline constexpr float least_scale = 0.85f, most_scale = 1.6f;
+
 struct Desk {
   Scenario scenario;  // on screen; may be one that cannot be driven
   bool touched = true;
@@ -115,7 +117,7 @@ struct Desk {
   Layout layout;
 
   bool dark = true;
-  float scale = 1.0f;  // of text and targets, by choice: 0.85 to 1.6
+  float scale = 1.0f;  // of text and targets, by choice: least_scale to most_scale
   Notice notice;
   double now = 0.0;      // s, host::seconds() at the start of the frame
   bool animate = false;  // set during a frame by whoever will look different in the next without an event

@@ -1,0 +1,49 @@
+#include "web/panel/layout.h"
+
+#include <algorithm>
+#include <cmath>
+
+namespace lw::panel {
+namespace {
+
+constexpr float chart_axis = 24.0f;  // what is left of the charts when they are folded
+
+Layout landscape(Layout layout, float width, float height, float scale, bool charts_open) {
+  const float panel = std::round(std::clamp(width * 0.295f, 360.0f * scale, 420.0f * scale));
+  const float left = width - panel;
+  const float top = std::round(88.0f * scale), play = std::round((layout.touch ? 56.0f : 44.0f) * scale);
+  const float open = std::clamp(height * 0.27f, 170.0f * scale, 420.0f * scale);
+  const float charts = std::round(charts_open ? open : chart_axis * scale);
+  layout.top = {0, 0, left, top};
+  layout.floor = {0, top, left, std::max(0.0f, height - top - play - charts)};
+  layout.play = {0, height - play - charts, left, play};
+  layout.charts = {0, height - charts, left, charts};
+  layout.panel = {left, 0, panel, height};
+  return layout;
+}
+
+Layout portrait(Layout layout, float width, float height, float scale, bool charts_open) {
+  const float top = std::round(92.0f * scale), play = std::round(56.0f * scale);
+  const float charts = std::round(charts_open ? std::clamp(height * 0.14f, 120.0f * scale, 260.0f * scale)
+                                              : chart_axis * scale);
+  const float panel = std::round(height * 0.35f);
+  const float floor = std::max(0.0f, height - top - play - charts - panel);
+  layout.top = {0, 0, width, top};
+  layout.floor = {0, top, width, floor};
+  layout.play = {0, top + floor, width, play};
+  layout.charts = {0, top + floor + play, width, charts};
+  layout.panel = {0, height - panel, width, panel};
+  return layout;
+}
+
+}  // namespace
+
+Layout arrange(float width, float height, float scale, bool touch, bool charts_open) {
+  Layout layout;
+  layout.upright = height > width;
+  layout.touch = touch || layout.upright;
+  return layout.upright ? portrait(layout, width, height, scale, charts_open)
+                        : landscape(layout, width, height, scale, charts_open);
+}
+
+}  // namespace lw::panel

@@ -1,0 +1,61 @@
+// What only the panel and the charts remember from frame to frame: nothing in here changes a result.
+#pragma once
+
+#include <optional>
+#include <string>
+#include <vector>
+
+#include "engine/scenario/validate.h"
+#include "web/panel/desk.h"
+
+namespace lw::panel {
+
+/// The order of the work; each is a stop on the line across the panel.
+enum class Step { vehicle, sensors, course, controller, stress, hand_over };
+inline constexpr const char* step_names[] = {"Vehicle",    "Sensors", "Course",
+                                             "Controller", "Stress",  "Hand over"};
+
+/// Why what was typed into a field was not taken. It stays by the field until the next entry.
+struct Refusal {
+  std::string path;  // "controller.kp"
+  std::string why;   // "between 0 and 100 %"
+};
+
+/// The line of a number while its spot is held: it must not change under the finger.
+struct HeldSpot {
+  unsigned id = 0;  // Dear ImGui's
+  double low = 0.0, high = 1.0;
+  double exact = 0.0;  // before snapping, for slow movements
+};
+
+/// One curve as it is drawn: for each pixel column the lowest and the highest value.
+struct Decimated {
+  std::vector<float> low, high;  // same length; NaN where the drive is over
+};
+
+struct ChartState {
+  double from = 0.0, to = 0.0;  // s, what is shown; from == to: the whole drive
+  bool open = true;
+  unsigned shown = 0x0F;  // bit i: strip i of strips() in charts.h
+
+  // What the cached curves belong to.
+  std::uint64_t revision = 0, kept_revision = 0;
+  double cached_from = 0.0, cached_to = 0.0;
+  int columns = 0;
+  std::vector<Decimated> curves, kept_curves;  // by curve number
+  std::vector<float> lowest, highest;          // by curve number, over the whole drive
+};
+
+struct PanelState {
+  Step step = Step::vehicle;
+  Refusal refusal;
+  std::optional<Fault> fault;  // the first field that keeps the scenario from being driven
+  HeldSpot held;
+  std::string help;  // path of the field whose meaning is shown below it
+  ChartState charts;
+  bool pushing = false;  // a finger scrolls the panel
+  bool library_open = false;
+  std::string link_entry;  // a link being typed or pasted
+};
+
+}  // namespace lw::panel
