@@ -4,10 +4,10 @@
   link_check.py check LINK TEXT   the link holds the same values as the TOML file TEXT
   link_check.py make TEXT         prints a link that holds TEXT as it stands
 
-LINK and TEXT are files; "-" is standard input. base64url is read by Python's base64 module (RFC 4648), the
-raw DEFLATE stream (RFC 1951) by Python's zlib and, with a header and a trailer of RFC 1952 put around it, by gzip
-as well; the text by Python's tomllib. The exit code is 0 when all agree, 1 when something does not, 2 for a
-wrong call.
+LINK and TEXT are files; "-" is standard input. base64url is read by Python's base64 module (RFC 4648),
+the raw DEFLATE stream (RFC 1951) by Python's zlib and, with a header and a trailer of RFC 1952 put
+around it, by gzip as well; the text by Python's tomllib. The exit code is 0 when all agree, 1 when
+something does not, 2 for a wrong call.
 """
 import base64
 import re

@@ -6,7 +6,6 @@
 #include <string>
 
 #include "engine/scenario/fields.h"
-#include "tests/catch.h"
 
 namespace lw::samples {
 
