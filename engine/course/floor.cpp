@@ -6,7 +6,7 @@
 #include "engine/course/sampling.h"
 #include "engine/course/spot.h"
 #include "engine/course/texture.h"
-#include "engine/course/zone.h"
+#include "engine/course/tile.h"
 
 namespace lw {
 namespace {
@@ -14,9 +14,7 @@ namespace {
 constexpr double cells_most = 60e6;  // 480 MB
 constexpr double tiles_most = 16e6;  // 64 MB of tile_start
 constexpr std::size_t tile_area = static_cast<std::size_t>(tile_cells) * tile_cells;
-constexpr double half_diagonal = 0.7072;  // of a cell, in cells
 constexpr Cell bare_cell{16384, 0, 0, 0};
-constexpr Cell dark_cell{0, 0, 0, 0};
 constexpr std::int32_t none = -1;
 
 /// Samples [first, last] of the centreline that come near a tile; `before` is the run of the same tile found
@@ -130,88 +128,6 @@ std::vector<Branch> branches_of(const Work& work, std::int32_t run) {
   return branches;
 }
 
-/// What a cell is, and for how many more cells along the row that will hold.
-struct Verdict {
-  enum Kind { bare, dark, closed_form, zone } kind;
-  double further;  // cells
-  SpotPlace place;
-};
-
-/// Distance along the branch from s to the nearest edge of a gap, open end or corner; and whether s is bare.
-struct EdgeNear {
-  double distance;
-  bool bare;
-};
-
-EdgeNear edge_near(const Branch& branch, double s) {
-  EdgeNear near{std::min(std::fabs(s - branch.from), std::fabs(branch.to - s)), false};
-  for (const Bare& gap : branch.bare) {
-    near.distance = std::min({near.distance, std::fabs(s - gap.from), std::fabs(s - gap.to)});
-    near.bare = near.bare || (s > gap.from && s < gap.to);
-  }
-  return near;
-}
-
-Verdict judge(const Work& work, const SpotTable& spot, std::vector<Walk>& walks, double pitch, double x,
-              double y) {
-  const double outer = work.half_width + work.radius + half_diagonal * pitch;
-  const double inner = work.half_width - work.radius - half_diagonal * pitch;
-  const double around = work.radius + half_diagonal * pitch;
-  int active = 0;
-  bool regular = true;
-  double least = 1e9;
-  Verdict verdict{Verdict::closed_form, 0.0, {}};
-  for (Walk& walk : walks) {
-    const BranchFoot foot = walk.to(x, y);
-    least = std::min(least, foot.distance);
-    if (foot.distance > outer) continue;
-    const EdgeNear edge = edge_near(walk.branch(), foot.s);
-    const bool clear = edge.distance > around;
-    if (clear && edge.bare) continue;
-    if (foot.distance < inner && clear && !foot.held)
-      return {Verdict::dark, std::min(inner - foot.distance, edge.distance - around) / pitch, {}};
-    ++active;
-    regular = clear && !foot.held && std::fabs(foot.curvature) <= spot.curvature_most();
-    verdict.place = {foot.deviation, foot.tangent_x, foot.tangent_y, foot.curvature};
-  }
-  if (active == 0) return {Verdict::bare, std::max(0.0, (least - outer) / pitch), {}};
-  if (active > 1 || !regular) verdict.kind = Verdict::zone;
-  return verdict;
-}
-
-/// Cells left for the fine grid: those of one tile, and the rectangle around them.
-struct Rest {
-  std::vector<int> cells;
-  int i0 = tile_cells, i1 = -1, j0 = tile_cells, j1 = -1;
-  void add(int i, int j) {
-    cells.push_back(j * tile_cells + i);
-    i0 = std::min(i0, i), i1 = std::max(i1, i), j0 = std::min(j0, j), j1 = std::max(j1, j);
-  }
-};
-
-void draw_tile(const Work& work, const SpotTable& spot, double pitch, std::vector<Walk>& walks, double x,
-               double y, Cell* cells) {
-  Rest rest;
-  for (int j = 0; j < tile_cells; ++j)
-    for (int i = 0; i < tile_cells; ++i) {
-      const Verdict v = judge(work, spot, walks, pitch, x + (i + 0.5) * pitch, y + (j + 0.5) * pitch);
-      if (v.kind == Verdict::zone) {
-        rest.add(i, j);
-      } else if (v.kind == Verdict::closed_form) {
-        cells[j * tile_cells + i] = spot.cell_at(v.place);
-      } else {
-        const int end = i + static_cast<int>(std::min(v.further, tile_cells - 1.0 - i));
-        if (v.kind == Verdict::dark)
-          std::fill(cells + j * tile_cells + i, cells + j * tile_cells + end + 1, dark_cell);
-        i = end;
-      }
-    }
-  if (rest.cells.empty()) return;
-  const Zone zone({work.radius, work.half_width, pitch}, walks, x + rest.i0 * pitch, y + rest.j0 * pitch,
-                  rest.i1 - rest.i0 + 1, rest.j1 - rest.j0 + 1);
-  for (const int c : rest.cells) cells[c] = zone.cell_at(c % tile_cells - rest.i0, c / tile_cells - rest.j0);
-}
-
 /// With texture every tile a sensor may come to has cells of its own.
 std::vector<std::int32_t> tiles_within_margin(const Floor& floor, const Work& work) {
   std::vector<std::int32_t> tiles = work.drawn;
@@ -252,9 +168,7 @@ Result<Floor> make_floor(const Centreline& line, const Course& course, const Flo
     const double y = floor->y0 + (tiles[t] / floor->tiles_x) * work.tile;
     if (t < work.drawn.size()) {
       const std::vector<Branch> branches = branches_of(work, work.last_run[tiles[t]]);
-      std::vector<Walk> walks;
-      for (const Branch& branch : branches) walks.emplace_back(line, branch);
-      draw_tile(work, spot, pitch, walks, x, y, &floor->cells[start]);
+      draw_tile({line, spot, work.radius, work.half_width, pitch}, branches, x, y, &floor->cells[start]);
     }
     if (texture.amount > 0.0) add_texture(texture, x, y, pitch, &floor->cells[start]);
   }

@@ -66,29 +66,37 @@ SpotTable::SpotTable(double spot_radius, double half_width, double pitch)
   last_ = steps;
 }
 
-SpotTable::Entry SpotTable::edge_at(double x, double curvature) const {
+inline SpotTable::Edge SpotTable::edge_at(double x, double curvature) const {
   const double place = (x - low_) * per_step_;
-  if (place <= 0.0) return {0.0, 0.0, 0.0, 0.0, 0.0};
-  if (place >= last_) return {1.0, 0.0, 0.0, 0.0, 0.0};
+  if (place <= 0.0) return {0.0, 0.0, 0.0};
+  if (place >= last_) return {1.0, 0.0, 0.0};
   const int i = static_cast<int>(place);
   const double b = place - i, a = 1.0 - b;
   const Entry& e = table_[i];
   const Entry& f = table_[i + 1];
-  return {a * e.share + b * f.share + curvature * (a * e.lens + b * f.lens),
-          a * e.slope + b * f.slope + curvature * (a * e.lens_slope + b * f.lens_slope),
-          a * e.second + b * f.second, 0.0, 0.0};
+  Edge edge{a * e.share + b * f.share, a * e.slope + b * f.slope, a * e.second + b * f.second};
+  if (curvature != 0.0) {
+    edge.share += curvature * (a * e.lens + b * f.lens);
+    edge.slope += curvature * (a * e.lens_slope + b * f.lens_slope);
+  }
+  return edge;
 }
 
 Cell SpotTable::cell_at(const SpotPlace& place) const {
   const double k = place.curvature, d = place.deviation, p = pitch_;
-  const Entry left = edge_at(half_width_ - d, k / (1.0 - k * half_width_));
-  const Entry right = edge_at(-half_width_ - d, k / (1.0 + k * half_width_));
+  double left_curvature = 0.0, right_curvature = 0.0, bow = 0.0;
+  if (k != 0.0) {
+    left_curvature = k / (1.0 - k * half_width_);
+    right_curvature = k / (1.0 + k * half_width_);
+    bow = k / (1.0 - k * d);
+  }
+  const Edge left = edge_at(half_width_ - d, left_curvature);
+  const Edge right = edge_at(-half_width_ - d, right_curvature);
   // Brightness as a function of deviation: value, slope, second derivative.
   const double value = 1.0 - (left.share - right.share);
   const double slope = left.slope - right.slope;
   const double second = right.second - left.second;
   // Deviation over the plane: gradient the normal, second derivatives -bow along the tangent.
-  const double bow = k / (1.0 - k * d);
   const double tx = place.tangent_x, ty = place.tangent_y;
   return cell_from(value - slope * bow * p * p / 24.0, -slope * ty * p, slope * tx * p,
                    (-second * tx * ty - slope * bow * tx * ty) * p * p);

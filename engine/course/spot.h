@@ -42,7 +42,10 @@ class SpotTable {
     double share, slope, second;  // of the straight edge: 1, 1/m, 1/m^2
     double lens, lens_slope;      // what a curvature of 1/m adds: m, 1
   };
-  Entry edge_at(double x, double curvature) const;
+  struct Edge {
+    double share, slope, second;
+  };
+  Edge edge_at(double x, double curvature) const;
 
   double radius_, half_width_, pitch_;
   double low_, per_step_, last_ = 0.0;
