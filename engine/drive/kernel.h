@@ -34,6 +34,7 @@ struct State {
   Moment<L> moment;
   L until_next;  // s, the period now running
   Motion<L> motion;
+  SineCosine<L> facing;  // of the heading at the reading
   Track<L> track;
   SensorState<L> sensors;
   LawState<L> law;
@@ -84,10 +85,10 @@ inline State<L> start(const Setup<L>& setup, Bits<L> drive) {
 
 template <class L>
 inline void follow_phase(const Setup<L>& setup, State<L>& state) {
-  const SineCosine<L> facing = sine_cosine(state.motion.heading);
+  state.facing = sine_cosine(state.motion.heading);
   const L forward = setup.rig.optics.forward;
-  follow(setup.line, state.motion.x + forward * facing.cosine, state.motion.y + forward * facing.sine,
-         state.track);
+  follow(setup.line, state.motion.x + forward * state.facing.cosine,
+         state.motion.y + forward * state.facing.sine, state.track);
 
   const Task<L>& task = setup.rig.task;
   const L progress = state.track.laps_done + state.track.place;
@@ -103,7 +104,7 @@ inline void follow_phase(const Setup<L>& setup, State<L>& state) {
 template <class L>
 inline void sense_phase(const Setup<L>& setup, State<L>& state) {
   sense(setup.rig.optics, setup.wiring.sensors, setup.floor, setup.wiring.seed, state.moment, state.motion,
-        state.sensors);
+        state.facing, state.sensors);
   state.error = error_from(setup.rig.optics, setup.wiring.sensors, state.sensors);
 }
 

@@ -19,24 +19,37 @@ inline constexpr double half_pi = 0x1.921fb54442d18p+0;
 namespace detail {
 constexpr double factorial(int n) { return n < 2 ? 1.0 : n * factorial(n - 1); }
 
-/// sum of x^k / (first + k step)! with alternating signs, k from 0 to terms - 1, by Horner's rule
-template <int First, int Step, int Terms, bool Alternate, class L>
-inline L factorial_series(L x) {
-  L sum = all_lanes<L>(0.0);
-  for (int k = Terms - 1; k >= 0; --k) {
-    const double sign = Alternate && k % 2 == 1 ? -1.0 : 1.0;
-    sum = sum * x + sign / factorial(First + k * Step);
-  }
-  return sum;
+/// A power series by Horner's rule, unrolled at compile time: Series::term(k) is the coefficient of x^k.
+template <class Series, int K = 0, class L>
+inline L horner(L x) {
+  constexpr double coefficient = Series::term(K);
+  if constexpr (K + 1 == Series::terms)
+    return all_lanes<L>(coefficient);
+  else
+    return horner<Series, K + 1>(x) * x + coefficient;
 }
 
+/// 1/3! - x/5! + x^2/7! - ... : (1 - sin(t)/t)/t^2 at x = t^2
+struct SineTail {
+  static constexpr int terms = 7;
+  static constexpr double term(int k) { return (k % 2 == 0 ? 1.0 : -1.0) / factorial(3 + 2 * k); }
+};
+/// 1/4! - x/6! + x^2/8! - ... : (cos(t) - 1 + t^2/2)/t^4 at x = t^2
+struct CosineTail {
+  static constexpr int terms = 7;
+  static constexpr double term(int k) { return (k % 2 == 0 ? 1.0 : -1.0) / factorial(4 + 2 * k); }
+};
+/// 1/2! + x/3! + x^2/4! + ... : (e^x - 1 - x)/x^2
+struct ExponentialTail {
+  static constexpr int terms = 12;
+  static constexpr double term(int k) { return 1.0 / factorial(2 + k); }
+};
 /// 1/3 + x/5 + x^2/7 + ... : (atanh(t)/t - 1)/t^2 at x = t^2, and (1 - atan(t)/t)/t^2 at x = -t^2
-template <int Terms, class L>
-inline L tail_series(L x) {
-  L sum = all_lanes<L>(0.0);
-  for (int k = Terms - 1; k >= 0; --k) sum = sum * x + 1.0 / (2 * k + 3);
-  return sum;
-}
+template <int Terms>
+struct ArctangentTail {
+  static constexpr int terms = Terms;
+  static constexpr double term(int k) { return 1.0 / (2 * k + 3); }
+};
 }  // namespace detail
 
 template <class L>
@@ -53,8 +66,8 @@ inline SineCosine<L> sine_cosine(L angle) {
   const L rest = ((angle - quarter * 0x1.921fb54400000p+0) - quarter * 0x1.0b4611a600000p-34) -
                  quarter * 0x1.3198a2e037073p-69;
   const L square = rest * rest;
-  const L s = rest + rest * square * -detail::factorial_series<3, 2, 7, true>(square);
-  const L c = (1.0 - 0.5 * square) + square * square * detail::factorial_series<4, 2, 7, true>(square);
+  const L s = rest + rest * square * -detail::horner<detail::SineTail>(square);
+  const L c = (1.0 - 0.5 * square) + square * square * detail::horner<detail::CosineTail>(square);
   // quarter mod 4 picks which of the two, and the signs
   const Bits<L> turn = bits_of(quarter + 0x1.8p52);
   const Mask<L> swap = (turn & all_bits<L>(1)) != all_bits<L>(0);
@@ -72,7 +85,7 @@ inline L exponential(L x) {
   x = held(x, all_lanes<L>(-708.0), all_lanes<L>(709.0));
   const L power = nearest_whole(x * 0x1.71547652b82fep+0);
   const L rest = (x - power * 0x1.62e42fee00000p-1) - power * 0x1.a39ef35793c76p-33;
-  const L series = 1.0 + (rest + rest * rest * detail::factorial_series<2, 1, 12, false>(rest));
+  const L series = 1.0 + (rest + rest * rest * detail::horner<detail::ExponentialTail>(rest));
   const Bits<L> exponent = (bits_of(power + 0x1.8p52) + all_bits<L>(1023)) << 52;
   return series * number_of<L>(exponent);
 }
@@ -89,7 +102,7 @@ inline L logarithm(L x) {
   const L e = number_from<L>(bits >> 52) - select(small, all_lanes<L>(1023.0), all_lanes<L>(1022.0));
   const L s = (m - 1.0) / (m + 1.0);
   const L square = s * s;
-  const L tail = (s + s) * square * detail::tail_series<10>(square);
+  const L tail = (s + s) * square * detail::horner<detail::ArctangentTail<10>>(square);
   return e * 0x1.62e42fee00000p-1 + ((s + s) + (tail + e * 0x1.a39ef35793c76p-33));
 }
 
@@ -101,7 +114,7 @@ inline L arctangent(L x) {
   // atan(x) = pi/2 - atan(1/x), then twice atan(t) = 2 atan(t / (1 + sqrt(1 + t^2)))
   L t = select(steep, 1.0 / size, size);
   for (int halving = 0; halving < 2; ++halving) t = t / (1.0 + square_root(1.0 + t * t));
-  const L angle = 4.0 * (t - t * (t * t) * detail::tail_series<11>(-(t * t)));
+  const L angle = 4.0 * (t - t * (t * t) * detail::horner<detail::ArctangentTail<11>>(-(t * t)));
   return with_sign(select(steep, (half_pi - angle) + 0x1.1a62633145c07p-54, angle), x);
 }
 

@@ -105,12 +105,11 @@ struct Moment {
   Mask<L> first;  // the first loop of the drive
 };
 
-/// Reads every sensor at the pose given.
+/// Reads every sensor at the pose given; `facing` is the sine and cosine of its heading.
 template <class L>
 inline void sense(const Optics<L>& optics, const SensorWiring& wiring, const FloorView& floor,
                   std::uint64_t seed, const Moment<L>& moment, const Motion<L>& motion,
-                  SensorState<L>& state) {
-  const SineCosine<L> facing = sine_cosine(motion.heading);
+                  const SineCosine<L>& facing, SensorState<L>& state) {
   const L guide_x = motion.x + optics.forward * facing.cosine,
           guide_y = motion.y + optics.forward * facing.sine;
   Mask<L> fresh = moment.first;
