@@ -25,6 +25,9 @@ const char* unit_of(const Strip& strip, Scheme scheme) {
   return strip.first == 0 && scheme == Scheme::bar ? "mm" : strip.unit;
 }
 
+/// How tall a strip is beside the others: its curves' names lie one above the other.
+float share_of(const Strip& strip) { return strip.count == 1 ? 1.0f : strip.count == 2 ? 1.25f : 1.6f; }
+
 ImU32 colour_of(const Theme& t, int curve) {
   const ImU32 colours[curve_count] = {t.error, t.p, t.i, t.d, t.steer, t.left, t.right, t.deviation, t.speed};
   return colours[curve];
@@ -113,7 +116,7 @@ void draw_value_axis(const Ui& ui, const Plot& plot) {
   const Theme& t = ui.colours();
   ImDrawList& draw = *ImGui::GetWindowDrawList();
   const float text = line_height(ui, Type::small);
-  const int most = std::clamp(static_cast<int>(plot.box.height / (text * 1.4f)), 1, 5);
+  const int most = std::clamp(static_cast<int>(plot.box.height / (text * 1.15f)), 2, 6);
   const Ticks ticks = ticks_of(plot.low, plot.high, most);
   for (double at : ticks.at) {
     const float y = std::round(plot.y(static_cast<float>(at))) + 0.5f;
@@ -135,7 +138,7 @@ void draw_names(const Ui& ui, const Strip& strip, const Box& box, const TraceRow
   float y = box.y + std::max(0.0f, (box.height - line * static_cast<float>(strip.count)) / 2);
   for (int c = strip.first; c < strip.first + strip.count; ++c) {
     const Curve& curve = all[static_cast<std::size_t>(c)];
-    const std::string value = fixed(row.*curve.member * curve.scale, strip.unit[0] == '%' ? 1 : 1);
+    const std::string value = fixed(row.*curve.member * curve.scale, 1);
     const float name = put_text(ui, Type::small, {ui.px(14) + box.x, y}, colour_of(t, c), curve.name);
     if (box.height >= line * static_cast<float>(strip.count) * 0.9f) {
       put_text(ui, Type::small, {box.x + ui.px(20) + name, y}, t.text,
@@ -296,12 +299,16 @@ void draw_charts(Ui& ui, const Box& box) {
   draw_time_axis(ui, plots, time, box.bottom());
   const TraceRow row = between_rows(desk.good.trace, desk.playback.cursor);
   const float gap = ui.px(6), count = static_cast<float>(chosen.size());
-  const float height = (plots.height - gap * (count - 1)) / count;
+  float shares = 0.0f;
+  for (const Strip& strip : chosen) shares += share_of(strip);
+  const float unit = (plots.height - gap * (count - 1)) / shares;
+  float top = plots.y;
   ImDrawList& draw = *ImGui::GetWindowDrawList();
   for (std::size_t i = 0; i < chosen.size(); ++i) {
     const Strip& strip = chosen[i];
-    const Box inner{plots.x, plots.y + static_cast<float>(i) * (height + gap), std::floor(plots.width),
-                    height};
+    const float height = unit * share_of(strip);
+    const Box inner{plots.x, top, std::floor(plots.width), height};
+    top += height + gap;
     const Plot plot = plot_of(charts, strip, inner);
     draw_value_axis(ui, plot);
     draw_names(ui, strip, {box.x, inner.y, ui.px(gutter), height}, row);

@@ -114,7 +114,8 @@ struct FieldRow {
     for (int i = 0; i < 2; ++i) {
       const std::string entry = path + "[" + std::to_string(i) + "]";
       ImGui::SetCursorScreenPos({place.control + static_cast<float>(i) * (width + ui.px(6)), place.y});
-      const NumberGrip grip{entry, info.unit, info.range, info.grain};
+      const std::string unit = std::string(info.unit) + (i == 0 ? " x" : " y");
+      const NumberGrip grip{entry, unit, info.range, info.grain};
       take(ui, entry_grip(ui, grip, *values[i], width), [&](double v) { *values[i] = v; });
     }
     end_row(rows, place, path, info.meaning);

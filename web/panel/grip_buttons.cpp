@@ -168,6 +168,10 @@ int choice(const Ui& ui, std::string_view path, std::span<const std::string_view
   const float piece = width / static_cast<float>(names.size());
   draw.AddRectFilled({at.x, top}, {at.x + width, top + height}, t.raised, ui.px(3));
   int picked = -1;
+  Type type = Type::text;
+  for (std::string_view name : names) {
+    if (measure(ui, type, name).x > piece - ui.px(6)) type = Type::small;
+  }
   for (std::size_t i = 0; i < names.size(); ++i) {
     const float x = at.x + piece * static_cast<float>(i);
     std::string shown(names[i]);
@@ -178,9 +182,9 @@ int choice(const Ui& ui, std::string_view path, std::span<const std::string_view
     const bool on = static_cast<int>(i) == chosen;
     const ImVec2 low{x + ui.px(2), top + ui.px(2)}, high{x + piece - ui.px(2), top + height - ui.px(2)};
     if (on || ImGui::IsItemHovered()) draw.AddRectFilled(low, high, on ? t.accent : t.hover, ui.px(2));
-    const std::string fit = fitted(ui, Type::text, shown, piece - ui.px(6));
-    const ImVec2 letters = measure(ui, Type::text, fit);
-    put_text(ui, Type::text, {x + (piece - letters.x) / 2, top + (height - letters.y) / 2},
+    const std::string fit = fitted(ui, type, shown, piece - ui.px(4));
+    const ImVec2 letters = measure(ui, type, fit);
+    put_text(ui, type, {x + (piece - letters.x) / 2, top + (height - letters.y) / 2},
              on ? t.on_accent : t.text, fit);
   }
   ImGui::SetCursorScreenPos(at);

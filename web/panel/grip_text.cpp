@@ -92,9 +92,9 @@ std::string shown_number(double value, double grain) {
   char text[64];
   const int least = grain > 0 ? decimals_of(grain) : 0;
   // More decimals than the grain has when the value needs them, but not the tail of a binary fraction.
-  for (int decimals = least; decimals <= 6; ++decimals) {
+  for (int decimals = least; decimals <= 9; ++decimals) {
     std::snprintf(text, sizeof text, "%.*f", decimals, value);
-    if (std::abs(std::strtod(text, nullptr) - value) <= 1e-9 * std::max(1.0, std::abs(value))) return text;
+    if (std::abs(std::strtod(text, nullptr) - value) <= 1e-9 * std::abs(value)) return text;
   }
   std::snprintf(text, sizeof text, "%.6g", value);
   return text;

@@ -16,11 +16,7 @@ struct GainLine {
   std::string per_loop, per_second;
 };
 
-std::string gain_text(double value) {
-  char text[32];
-  std::snprintf(text, sizeof text, "%.5g", value);
-  return text;
-}
+std::string gain_text(double value) { return shown_number(value, 0.0); }
 
 /// The numbers that go into the vehicle's own loop.
 void gain_sheet(Ui& ui) {

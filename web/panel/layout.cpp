@@ -12,7 +12,7 @@ Layout landscape(Layout layout, float width, float height, float scale, bool cha
   const float panel = std::round(std::clamp(width * 0.295f, 360.0f * scale, 420.0f * scale));
   const float left = width - panel;
   const float top = std::round(88.0f * scale), play = std::round((layout.touch ? 56.0f : 44.0f) * scale);
-  const float open = std::clamp(height * 0.27f, 170.0f * scale, 420.0f * scale);
+  const float open = std::clamp(height * 0.29f, 180.0f * scale, 420.0f * scale);
   const float charts = std::round(charts_open ? open : chart_axis * scale);
   layout.top = {0, 0, left, top};
   layout.floor = {0, top, left, std::max(0.0f, height - top - play - charts)};

@@ -6,7 +6,7 @@
 namespace lw::panel {
 namespace {
 
-constexpr std::string_view rate_names[] = {"0.25x", "0.5x", "1x", "2x", "4x", "8x"};
+constexpr std::string_view rate_names[] = {"\u00BC", "\u00BD", "1", "2", "4", "8\u00D7"};
 
 int chosen_rate(const Playback& playback) {
   for (int i = 0; i < static_cast<int>(std::size(play_rates)); ++i) {
@@ -90,7 +90,7 @@ void draw_play(Ui& ui, const Box& box) {
   ImGui::SameLine(0, gap);
   if (icon_button(ui, "One loop on", Icon::forward, ready)) step_loops(desk, 1);
   ImGui::SameLine(0, ui.px(12));
-  const float rates = ui.px(desk.layout.upright ? 282 : 264);
+  const float rates = ui.px(desk.layout.touch ? 264 : 228);
   const int picked = choice(ui, "speed", rate_names, chosen_rate(desk.playback), rates);
   if (picked >= 0) desk.playback.rate = play_rates[picked];
   ImGui::SameLine(0, ui.px(14));

@@ -8,6 +8,7 @@ namespace lw::panel {
 namespace {
 
 constexpr Range mismatch_range{-20.0, 20.0};
+constexpr double usual_kp_per_mm = 0.02;  // for a bar of sensors
 constexpr double tenth_micrometre = 1e4;  // per mm
 
 double period_s(const Scenario& scenario) { return scenario.loop.period_ms / 1000.0; }
@@ -50,6 +51,10 @@ void kp_row(Rows& rows) {
       bar ? 0.0005 : 0.005,
       usual("controller", "kp")};
   row.one_sided = true;
+  if (bar) {  // the default is meant for an error in shares of full scale
+    row.no_default = true;
+    row.usual = usual_kp_per_mm;
+  }
   number_row(rows, row, s.controller.kp, [&](double v) { s.controller.kp = v; });
 }
 
@@ -76,8 +81,8 @@ void twin_row(Rows& rows, const TwinRow& twin) {
     take(ui, {0.0, true}, set(own));
   }
   const float entry = ui.px(78);
-  const float line_width = place.room - 2 * entry - ui.px(10) + ui.px(30);
-  ImGui::SetCursorScreenPos({place.control - ui.px(30), place.y});
+  const float line_width = place.room - 2 * entry - ui.px(10) + ui.px(56);
+  ImGui::SetCursorScreenPos({place.control - ui.px(56), place.y});
   const double scale = own == GainUnit::per_loop ? 1.0 : twin.second_per_loop;
   double grain = twin.grain;
   if (own == GainUnit::per_second) grain = std::pow(10.0, std::round(std::log10(twin.grain * scale)));

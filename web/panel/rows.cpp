@@ -8,6 +8,7 @@ namespace {
 
 constexpr float least_column = 330.0f;  // CSS pixels at scale 1 below which a row gets cramped
 constexpr float gap = 22.0f;
+constexpr float label_width = 132.0f;
 
 /// Whether a message about `about` ("sensors.gain[1]") belongs to the row of `path` ("sensors.gain").
 bool concerns(std::string_view about, std::string_view path) {
@@ -64,7 +65,7 @@ bool begin_row(Rows& rows, const RowLabel& label, RowPlace& place) {
   place.width = std::floor((rows.width - (count - 1) * ui.px(gap)) / count);
   place.x = rows.left + static_cast<float>(rows.column) * (place.width + ui.px(gap));
   place.y = rows.top;
-  place.label = ui.px(112);
+  place.label = ui.px(label_width);
   place.control = place.x + place.label;
   place.room = place.width - place.label;
 

@@ -51,6 +51,7 @@ struct NumberRow {
   Range range;
   double grain = 1.0, usual = 0.0;
   bool whole = false, one_sided = false;
+  bool no_default = false;  // `usual` only tells how far the line spans
 };
 template <class Set>
 void number_row(Rows& rows, const NumberRow& row, double value, Set&& set);
@@ -78,14 +79,14 @@ void number_row(Rows& rows, const NumberRow& row, double value, Set&& set) {
   const RowLabel label{row.path,
                        row.label,
                        row.meaning,
-                       with_unit(shown_number(row.usual, row.grain), row.unit),
+                       row.no_default ? std::string() : with_unit(shown_number(row.usual, row.grain), row.unit),
                        range_words(row.range, row.unit),
                        value != row.usual};
   if (begin_row(rows, label, place)) {
     begin_edit(ui.desk);
     take(ui, {row.usual, true}, set);
   }
-  const float entry = ui.px(row.unit.size() > 2 ? 104.0f : 96.0f);
+  const float entry = ui.px(row.unit.size() > 2 ? 98.0f : 90.0f);
   const NumberGrip grip{row.path, row.unit, row.range, row.grain, row.usual, row.whole, row.one_sided};
   take(ui, line_grip(ui, grip, value, place.room - entry - ui.px(6)), set);
   ImGui::SetCursorScreenPos({place.x + place.width - entry, place.y});
