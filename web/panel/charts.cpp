@@ -96,6 +96,15 @@ void draw_curve(const Decimated& curve, const Plot& plot, ImU32 colour, float th
   flush();
 }
 
+/// Ticks as many as the height has room for, with one beside 0 at least.
+Ticks value_ticks(const Ui& ui, const Plot& plot) {
+  const auto most = static_cast<int>(plot.box.height / (line_height(ui, Type::small) * 1.2f));
+  for (int count = std::clamp(most, 1, 6);; ++count) {
+    Ticks ticks = ticks_of(plot.low, plot.high, count);
+    if (ticks.at.size() > 1 || count > 12) return ticks;
+  }
+}
+
 Plot plot_of(const ChartState& charts, const Strip& strip, const Box& box) {
   Plot plot{box, 0.0f, 0.0f};
   for (int c = strip.first; c < strip.first + strip.count; ++c) {
@@ -116,15 +125,20 @@ void draw_value_axis(const Ui& ui, const Plot& plot) {
   const Theme& t = ui.colours();
   ImDrawList& draw = *ImGui::GetWindowDrawList();
   const float text = line_height(ui, Type::small);
-  const int most = std::clamp(static_cast<int>(plot.box.height / (text * 1.15f)), 2, 6);
-  const Ticks ticks = ticks_of(plot.low, plot.high, most);
+  Ticks ticks = value_ticks(ui, plot);
+  // The farthest from 0 are labelled first; a label that would lie on another is left out.
+  std::stable_sort(ticks.at.begin(), ticks.at.end(),
+                   [](double a, double b) { return std::abs(a) > std::abs(b); });
+  std::vector<float> taken;
   for (double at : ticks.at) {
     const float y = std::round(plot.y(static_cast<float>(at))) + 0.5f;
-    draw.AddLine({plot.box.x, y}, {plot.box.right(), y}, at == 0 ? t.faint : faded(t.rule, 0.8f),
-                 at == 0 ? 1.0f : 1.0f);
+    draw.AddLine({plot.box.x, y}, {plot.box.right(), y}, at == 0 ? t.faint : faded(t.rule, 0.8f));
+    const float label_y = std::clamp(y - text / 2, plot.box.y - 2, plot.box.bottom() - text + 2);
+    const auto hides = [&](float other) { return std::abs(other - label_y) < text - 2; };
+    if (std::any_of(taken.begin(), taken.end(), hides)) continue;
+    taken.push_back(label_y);
     const std::string label = fixed(at, ticks.decimals);
     const float width = measure(ui, Type::small, label).x;
-    const float label_y = std::clamp(y - text / 2, plot.box.y - 2, plot.box.bottom() - text + 2);
     put_text(ui, Type::small, {plot.box.x - width - ui.px(6), label_y}, t.faint, label);
   }
 }
@@ -134,16 +148,20 @@ void draw_names(const Ui& ui, const Strip& strip, const Box& box, const TraceRow
   const Theme& t = ui.colours();
   const auto all = curves(ui.desk.good.scenario.sensors.scheme);
   const char* unit = unit_of(strip, ui.desk.good.scenario.sensors.scheme);
-  const float line = line_height(ui, Type::small);
-  float y = box.y + std::max(0.0f, (box.height - line * static_cast<float>(strip.count)) / 2);
+  const float line = line_height(ui, Type::small), count = static_cast<float>(strip.count);
+  const bool one_line = box.height < line * count * 0.95f;  // names alone, side by side
+  float x = box.x + ui.px(14),
+        y = box.y + std::max(0.0f, (box.height - line * (one_line ? 1.0f : count)) / 2);
   for (int c = strip.first; c < strip.first + strip.count; ++c) {
     const Curve& curve = all[static_cast<std::size_t>(c)];
-    const std::string value = fixed(row.*curve.member * curve.scale, 1);
-    const float name = put_text(ui, Type::small, {ui.px(14) + box.x, y}, colour_of(t, c), curve.name);
-    if (box.height >= line * static_cast<float>(strip.count) * 0.9f) {
-      put_text(ui, Type::small, {box.x + ui.px(20) + name, y}, t.text,
-               value + (strip.count == 1 ? std::string(" ") + unit : ""));
+    const float name = put_text(ui, Type::small, {x, y}, colour_of(t, c), curve.name);
+    if (one_line && strip.count > 1) {
+      x += name + ui.px(8);
+      continue;
     }
+    std::string value = fixed(row.*curve.member * curve.scale, 1);
+    if (strip.count == 1) value += std::string(" ") + unit;
+    put_text(ui, Type::small, {x + name + ui.px(6), y}, t.text, value);
     y += line;
   }
 }
@@ -199,12 +217,12 @@ void strip_choice(Ui& ui, const Box& box) {
   const Theme& t = ui.colours();
   ChartState& charts = ui.state.charts;
   float x = box.x + ui.px(4);
-  const float height = ui.px(axis_height), y = box.y;
-  const float target = ui.desk.layout.touch ? ui.px(40) : height;
+  const float height = box.height, y = box.y;
+  const float target = std::max(height, ui.px(axis_height));
   ImGui::SetCursorScreenPos({x, y});
   const std::string fold = std::string(charts.open ? "Fold charts" : "Show charts") + "##fold";
   if (ImGui::InvisibleButton(fold.c_str(), {target, height})) charts.open = !charts.open;
-  const ImVec2 c{x + height / 2, y + height / 2};
+  const ImVec2 c{x + target / 2, y + height / 2};
   const float r = ui.px(5), s = charts.open ? 1.0f : -1.0f;
   ImDrawList& draw = *ImGui::GetWindowDrawList();
   draw.AddTriangleFilled({c.x - r, c.y - s * r * 0.6f}, {c.x + r, c.y - s * r * 0.6f},
@@ -277,19 +295,20 @@ void pinch_charts(Ui& ui, const Box& box, const app::Pinch& pinch) {
 void draw_charts(Ui& ui, const Box& box) {
   const Desk& desk = ui.desk;
   ChartState& charts = ui.state.charts;
-  const float bar = ui.px(axis_height);
+  const float axis = ui.px(axis_height), bar = ui.px(desk.layout.touch ? 40.0f : axis_height);
   strip_choice(ui, {box.x, box.y, box.width, bar});
   std::vector<Strip> chosen;
   for (std::size_t i = 0; i < std::size(all_strips); ++i) {
     if (is_shown(charts, i)) chosen.push_back(all_strips[i]);
   }
   if (!charts.open || chosen.empty() || !has_drive(desk)) return;
-  const Box plots{box.x + ui.px(gutter), box.y + bar, box.width - ui.px(gutter + edge), box.height - 2 * bar};
+  const Box plots{box.x + ui.px(gutter), box.y + bar, box.width - ui.px(gutter + edge),
+                  box.height - bar - axis};
   if (plots.width < 20 || plots.height < 20) return;
   Span time = time_shown(desk, charts);
   ImGui::SetCursorScreenPos({plots.x, plots.y});
   ImGui::SetNextItemAllowOverlap();
-  ImGui::InvisibleButton("charts", {plots.width, plots.height + bar},
+  ImGui::InvisibleButton("charts", {plots.width, plots.height + axis},
                          ImGuiButtonFlags_MouseButtonLeft | ImGuiButtonFlags_MouseButtonRight |
                              ImGuiButtonFlags_MouseButtonMiddle);
   handle_hand(ui, plots, time);

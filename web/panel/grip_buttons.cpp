@@ -224,7 +224,7 @@ void tip(const Ui& ui, std::string_view text) {
 
 void title(const Ui& ui, const char* text) {
   const ImVec2 at = ImGui::GetCursorScreenPos();
-  const float height = line_height(ui, Type::strong), top = ui.px(10);
+  const float height = line_height(ui, Type::strong), top = ui.px(6);
   const float width = put_text(ui, Type::strong, {at.x, at.y + top}, ui.colours().text, text);
   const float y = std::round(at.y + top + height / 2) + 1, right = at.x + ImGui::GetContentRegionAvail().x;
   ImGui::GetWindowDrawList()->AddLine({at.x + width + ui.px(10), y}, {right, y}, ui.colours().rule, 1.0f);

@@ -6,14 +6,15 @@
 namespace lw::panel {
 namespace {
 
-constexpr float chart_axis = 24.0f;  // what is left of the charts when they are folded
+// What is left of the charts when they are folded: the names of the strips.
+float folded(const Layout& layout, float scale) { return std::round((layout.touch ? 40.0f : 24.0f) * scale); }
 
 Layout landscape(Layout layout, float width, float height, float scale, bool charts_open) {
   const float panel = std::round(std::clamp(width * 0.295f, 360.0f * scale, 420.0f * scale));
   const float left = width - panel;
   const float top = std::round(88.0f * scale), play = std::round((layout.touch ? 56.0f : 44.0f) * scale);
   const float open = std::clamp(height * 0.29f, 180.0f * scale, 420.0f * scale);
-  const float charts = std::round(charts_open ? open : chart_axis * scale);
+  const float charts = charts_open ? std::round(open) : folded(layout, scale);
   layout.top = {0, 0, left, top};
   layout.floor = {0, top, left, std::max(0.0f, height - top - play - charts)};
   layout.play = {0, height - play - charts, left, play};
@@ -24,9 +25,10 @@ Layout landscape(Layout layout, float width, float height, float scale, bool cha
 
 Layout portrait(Layout layout, float width, float height, float scale, bool charts_open) {
   const float top = std::round(92.0f * scale), play = std::round(56.0f * scale);
-  const float charts = std::round(charts_open ? std::clamp(height * 0.14f, 120.0f * scale, 260.0f * scale)
-                                              : chart_axis * scale);
-  const float panel = std::round(height * 0.35f);
+  const float open = std::clamp(height * 0.15f, 120.0f * scale, 260.0f * scale);
+  const float charts = charts_open ? std::round(open) : folded(layout, scale);
+  // Folded charts leave their room to the panel, which has the least here.
+  const float panel = std::round(height * 0.36f + (charts_open ? 0.0f : open - charts));
   const float floor = std::max(0.0f, height - top - play - charts - panel);
   layout.top = {0, 0, width, top};
   layout.floor = {0, top, width, floor};

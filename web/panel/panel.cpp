@@ -224,7 +224,7 @@ void draw_notice(Ui& ui, const Box& floor) {
   const float wrap = std::min(floor.width - 2 * side - close, ui.px(620)) - 2 * side;
   const ImVec2 letters = measure(ui, Type::text, notice.text, wrap);
   const float height = std::max(letters.y + ui.px(16), close), width = letters.x + 2 * side + close;
-  const ImVec2 at{floor.x + (floor.width - width) / 2, floor.bottom() - height - ui.px(14)};
+  const ImVec2 at{floor.x + (floor.width - width) / 2, floor.bottom() - height - ui.px(46)};
   ImDrawList& draw = *ImGui::GetWindowDrawList();
   draw.AddRectFilled(at, {at.x + width, at.y + height}, t.surface, ui.px(4));
   draw.AddRect(at, {at.x + width, at.y + height}, notice.bad ? t.bad : t.rule, ui.px(4));

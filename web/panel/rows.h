@@ -76,12 +76,13 @@ template <class Set>
 void number_row(Rows& rows, const NumberRow& row, double value, Set&& set) {
   Ui& ui = rows.ui;
   RowPlace place;
-  const RowLabel label{row.path,
-                       row.label,
-                       row.meaning,
-                       row.no_default ? std::string() : with_unit(shown_number(row.usual, row.grain), row.unit),
-                       range_words(row.range, row.unit),
-                       value != row.usual};
+  const RowLabel label{
+      row.path,
+      row.label,
+      row.meaning,
+      row.no_default ? std::string() : with_unit(shown_number(row.usual, row.grain), row.unit),
+      range_words(row.range, row.unit),
+      value != row.usual};
   if (begin_row(rows, label, place)) {
     begin_edit(ui.desk);
     take(ui, {row.usual, true}, set);
