@@ -1,0 +1,131 @@
+#include "web/view/overlays.h"
+
+#include <algorithm>
+#include <cmath>
+#include <cstdio>
+
+#include "web/page/typeface.h"
+#include "web/view/layers.h"
+#include "web/view/vehicle_drawing.h"
+
+namespace lw::view {
+namespace {
+
+float text_size(ImFont* font, float unit) { return font->FontSize * ImGui::GetIO().FontGlobalScale * unit; }
+
+ImVec2 measured(ImFont* font, float unit, std::string_view text) {
+  return font->CalcTextSizeA(text_size(font, unit), 1e9f, 0.0f, text.data(), text.data() + text.size());
+}
+
+void write(const Bench& bench, ImFont* font, ImVec2 at, ImU32 colour, std::string_view text) {
+  bench.draw.AddText(font, text_size(font, bench.unit), at, colour, text.data(), text.data() + text.size());
+}
+
+/// The ramp of colours with its two ends named; `right` is its right edge. Returns its left edge.
+float draw_legend(const Bench& bench, float right, float middle) {
+  ImFont* font = page::typeface().small;
+  const float unit = bench.unit, width = 110 * unit, height = 8 * unit;
+  char far[32];
+  std::snprintf(far, sizeof far, "%.4g mm", bench.desk.good.scenario.drive.lost_mm);
+  const ImVec2 far_size = measured(font, unit, far), off_size = measured(font, unit, "off the line 0");
+  const float y = middle - 0.5f * far_size.y;
+  float x = right - far_size.x;
+  write(bench, font, {x, y}, bench.theme.text, far);
+  x -= 8 * unit + width;
+  constexpr int parts = 24;
+  for (int i = 0; i < parts; ++i) {
+    const float step = width / parts, from = x + step * static_cast<float>(i);
+    bench.draw.AddRectFilled({from, middle - 0.5f * height}, {from + step + 0.5f, middle + 0.5f * height},
+                             panel::deviation_colour(bench.desk.dark, (i + 0.5) / parts));
+  }
+  x -= 8 * unit + off_size.x;
+  write(bench, font, {x, y}, bench.theme.text, "off the line 0");
+  return x;
+}
+
+/// A bar as long as one square of the grid. Returns its left edge.
+float draw_scale(const Bench& bench, float right, float middle, double grid_mm) {
+  ImFont* font = page::typeface().small;
+  const float unit = bench.unit;
+  const auto width = static_cast<float>(grid_mm * bench.floor.view.scale);
+  const std::string text = length_text(grid_mm);
+  const ImVec2 size = measured(font, unit, text);
+  const float x = right - size.x - 8 * unit - width;
+  write(bench, font, {right - size.x, middle - 0.5f * size.y}, bench.theme.text, text);
+  const ImU32 colour = bench.theme.text;
+  bench.draw.AddRectFilled({x, middle - 1}, {x + width, middle + 1}, colour);
+  for (const float end : {x, x + width})
+    bench.draw.AddRectFilled({end - 1, middle - 5 * unit}, {end + 1, middle + 5 * unit}, colour);
+  return x;
+}
+
+}  // namespace
+
+void draw_bubble(const Bench& bench, Pixel at, std::string_view text, ImU32 colour) {
+  ImFont* font = page::typeface().small;
+  const float unit = bench.unit, pad = 7 * unit;
+  const Frame& frame = bench.floor.view.frame;
+  const float wrap = std::min(340 * unit, frame.width - 40);
+  const ImVec2 size = font->CalcTextSizeA(text_size(font, unit), 1e9f, wrap, text.data(), text.data() + text.size());
+  // Above a finger that would hide it, beside a mouse pointer.
+  const float lift = bench.pointer.reach > 15 ? 54 * unit : 16 * unit;
+  const ImVec2 room{size.x + 2 * pad, size.y + 1.4f * pad};
+  float x = bench.pointer.reach > 15 ? at.x - 0.5f * room.x : at.x + 14 * unit;
+  float y = at.y - lift - room.y;
+  if (y < frame.y + 4) y = at.y + lift;
+  x = std::clamp(x, frame.x + 4, std::max(frame.x + 4, frame.x + frame.width - room.x - 4));
+  bench.draw.AddRectFilled({x, y}, {x + room.x, y + room.y}, bench.theme.surface, 4 * unit);
+  bench.draw.AddRect({x, y}, {x + room.x, y + room.y}, bench.theme.rule, 4 * unit);
+  bench.draw.AddText(font, text_size(font, unit), {x + pad, y + 0.7f * pad}, colour, text.data(),
+                     text.data() + text.size(), wrap);
+}
+
+float footer_height(const Bench& bench) { return 30 * bench.unit; }
+
+void draw_footer(const Bench& bench, double grid_mm, std::string_view hint) {
+  const Frame& f = bench.floor.view.frame;
+  const float height = footer_height(bench), top = f.y + f.height - height, middle = top + 0.5f * height;
+  const float pad = 12 * bench.unit;
+  bench.draw.AddRectFilled({f.x, top}, {f.x + f.width, f.y + f.height}, panel::faded(bench.theme.ground, 0.82f));
+  float left = f.x + f.width - pad;
+  if (panel::has_drive(bench.desk)) left = draw_legend(bench, left, middle) - 2.2f * pad;
+  left = draw_scale(bench, left, middle, grid_mm) - 2 * pad;
+  ImFont* font = page::typeface().small;
+  const ImVec2 size = measured(font, bench.unit, hint);
+  bench.draw.PushClipRect({f.x, top}, {left, f.y + f.height}, true);
+  write(bench, font, {f.x + pad, middle - 0.5f * size.y}, bench.theme.faint, hint);
+  bench.draw.PopClipRect();
+}
+
+void draw_close_up(const Bench& bench, float top) {
+  const Frame& f = bench.floor.view.frame;
+  const float side = std::clamp(0.42f * std::min(f.width, f.height), 150 * bench.unit, 260 * bench.unit);
+  if (f.height < 1.6f * side || f.width < 2.5f * side) return;
+  const Frame frame{f.x + f.width - side - 10 * bench.unit, top, side, side};
+  const panel::GoodDrive& good = bench.desk.good;
+  const TraceRow row = panel::between_rows(good.trace, bench.desk.playback.cursor);
+  const double reach = reach_of_vehicle(good.scenario), ahead = 0.5 * good.scenario.sensors.forward_mm;
+  View view;
+  view.frame = frame;
+  view.scale = 0.5 * side / (1.12 * reach);
+  view.centre_x = 1e3 * row.x + ahead * std::cos(row.heading);
+  view.centre_y = 1e3 * row.y + ahead * std::sin(row.heading);
+  const ImVec2 low{frame.x, frame.y}, high{frame.x + side, frame.y + side};
+  bench.draw.PushClipRect(low, high, true);
+  bench.draw.AddRectFilled(low, high, bench.theme.bare);
+  Mesh mesh;
+  mesh.clip = frame;
+  const double width = good.scenario.course.line_mm;
+  add_tape(mesh, bench.floor.near_shape, view, width, bench.theme);
+  if (!bench.floor.path.x.empty())
+    add_path(mesh, bench.floor.path, view, good.scenario.drive.lost_mm, bench.desk.dark, 2.0f * bench.unit);
+  put(mesh, bench.draw);
+  const std::size_t at = panel::row_at(good.trace, bench.desk.playback.cursor);
+  const auto sensors = static_cast<std::size_t>(good.trace.sensors);
+  draw_vehicle(bench.draw, view, good.scenario, row,
+               std::span(good.trace.readings).subspan(at * sensors, sensors), bench.theme, true);
+  bench.draw.PopClipRect();
+  bench.draw.AddRect(low, high, bench.theme.rule, 0, 0, 2.0f);
+}
+
+}  // namespace lw::view

@@ -1,0 +1,20 @@
+// What hovers over the floor: scale, legend, words by the pointer, the close-up of the vehicle.
+#pragma once
+
+#include <string_view>
+
+#include "web/view/bench.h"
+
+namespace lw::view {
+
+/// A few words beside a place, kept inside the frame.
+void draw_bubble(const Bench& bench, Pixel at, std::string_view text, ImU32 colour);
+
+/// Lower edge of the floor: what a drag does, one grid square's length, and what the colours mean.
+void draw_footer(const Bench& bench, double grid_mm, std::string_view hint);
+float footer_height(const Bench& bench);
+
+/// The vehicle with the floor around it, large, in the upper right corner.
+void draw_close_up(const Bench& bench, float top);
+
+}  // namespace lw::view

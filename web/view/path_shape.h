@@ -1,0 +1,39 @@
+// The way of the guide point over the floor, drawn from a trace.
+//
+// The guide point is the middle of the sensors: it is what follows the line, and whose deviation colours the
+// path. (The axle cuts bends on the inside.) The path is computed once a drive; thinned() picks what a screen
+// can show.
+#pragma once
+
+#include <cstddef>
+#include <vector>
+
+#include "engine/drive/trace.h"
+#include "web/view/transform.h"
+
+namespace lw::view {
+
+struct Path {
+  std::vector<float> x, y;       // mm, one a row of the trace
+  std::vector<float> deviation;  // mm, magnitude
+};
+
+/// `forward_mm`: of the guide point ahead of the axle.
+Path path_of(const Trace& trace, double forward_mm);
+
+/// Rows to be drawn: the first, the last, and others at least `apart_px` from the one before, more where the
+/// path is longer than `most` of them.
+std::vector<std::size_t> thinned(const Path& path, const View& view, float apart_px, std::size_t most = 6000);
+
+/// The row whose place is nearest to `p` on the screen and its distance in px; of places about as near
+/// (within `slack_px`) the one nearest in order to `favoured`, so that a crossing does not make the cursor
+/// jump.
+struct NearRow {
+  std::size_t row = 0;
+  float distance = 1e30f;  // px
+};
+NearRow nearest_row(const Path& path, const View& view, Pixel p, std::size_t favoured, float slack_px);
+
+Box box_of(const Path& path);
+
+}  // namespace lw::view
