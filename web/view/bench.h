@@ -33,7 +33,8 @@ struct Bench {
   const Course& course() const { return desk.scenario.course; }
   const Centreline& line() const { return desk.good.plan.ground->line; }
   bool idle() const { return floor.held.grip == Grip::nothing; }
-  /// The course on screen is the one that was driven, so that arc lengths of the line are those of the course.
+  /// The course on screen is the one that was driven, so that arc lengths of the line are those of the
+  /// course.
   bool in_step() const { return panel::has_drive(desk) && !desk.error; }
 };
 
@@ -56,8 +57,8 @@ void let_go(Bench& bench);
 
 /// The nearest place of the line to the pointer, m, when it is within reach of the tape.
 std::optional<double> line_under(const Bench& bench, Pixel p);
-/// The place of `line` nearest to a point of the floor, looked for around `s` first, so that a crossing does not lead
-/// astray; m.
+/// The place of `line` nearest to a point of the floor, looked for around `s` first, so that a crossing does
+/// not lead astray; m.
 double followed(const Centreline& line, double s, Point mm);
 
 // One frame of each tool: takes what the hand does and draws its handles.

@@ -21,7 +21,8 @@ void add_strips(Mesh& mesh, const LineShape& shape, const View& view, float half
     for (const CoursePoint& p : strip) points.push_back(section(view, p, half, colour));
     add_ribbon(mesh, points);
   }
-  for (const CoursePoint& p : shape.corners) add_disc(mesh, to_screen(view, 1e3 * p.x, 1e3 * p.y), half, colour);
+  for (const CoursePoint& p : shape.corners)
+    add_disc(mesh, to_screen(view, 1e3 * p.x, 1e3 * p.y), half, colour);
 }
 
 ImVec2 across(const View& view, const CoursePoint& p, double along_mm, double left_mm) {
@@ -31,7 +32,8 @@ ImVec2 across(const View& view, const CoursePoint& p, double along_mm, double le
 }
 
 /// Words by a mark, on a plate so that they can be read over anything.
-void label(ImDrawList& draw, Pixel at, const char* text, ImU32 colour, const panel::Theme& theme, float unit) {
+void label(ImDrawList& draw, Pixel at, const char* text, ImU32 colour, const panel::Theme& theme,
+           float unit) {
   ImFont* font = page::typeface().small;
   const float size = font->FontSize * ImGui::GetIO().FontGlobalScale * unit;
   const ImVec2 extent = font->CalcTextSizeA(size, 1e9f, 0.0f, text);
@@ -59,7 +61,8 @@ double draw_grid(ImDrawList& draw, const View& view, const panel::Theme& theme, 
   return step;
 }
 
-void add_tape(Mesh& mesh, const LineShape& shape, const View& view, double width_mm, const panel::Theme& theme) {
+void add_tape(Mesh& mesh, const LineShape& shape, const View& view, double width_mm,
+              const panel::Theme& theme) {
   const auto half = std::max(static_cast<float>(0.5 * width_mm * view.scale), 0.75f);
   add_strips(mesh, shape, view, half + 1.25f, theme.tape_edge);
   add_strips(mesh, shape, view, half, theme.tape);
@@ -80,7 +83,8 @@ void add_arrows(Mesh& mesh, const Centreline& line, const View& view, double wid
       return std::pair{(b.y - a.y) / d, -(b.x - a.x) / d};
     };
     for (int k = 0; k < 2; ++k) {
-      const auto [x, y] = direction(arrow[static_cast<std::size_t>(k)], arrow[static_cast<std::size_t>(k) + 1]);
+      const auto [x, y] =
+          direction(arrow[static_cast<std::size_t>(k)], arrow[static_cast<std::size_t>(k) + 1]);
       const RibbonPoint ends[] = {{arrow[static_cast<std::size_t>(k)], x, y, 0.9f, colour},
                                   {arrow[static_cast<std::size_t>(k) + 1], x, y, 0.9f, colour}};
       add_ribbon(mesh, ends);
@@ -95,8 +99,8 @@ void draw_start(ImDrawList& draw, const Centreline& line, const View& view, doub
   const double half = std::max(0.5 * width_mm + 4.0 / view.scale, 11.0 * unit / view.scale);
   const double thick = 2.0 * unit / view.scale, head = 11.0 * unit / view.scale;
   const CoursePoint p = point_at(line, 0.0);
-  draw.AddQuadFilled(across(view, p, -thick, half), across(view, p, thick, half), across(view, p, thick, -half),
-                     across(view, p, -thick, -half), theme.good);
+  draw.AddQuadFilled(across(view, p, -thick, half), across(view, p, thick, half),
+                     across(view, p, thick, -half), across(view, p, -thick, -half), theme.good);
   draw.AddTriangleFilled(across(view, p, thick + head, 0), across(view, p, thick, -0.62 * head),
                          across(view, p, thick, 0.62 * head), theme.good);
   if (line.closed) return;

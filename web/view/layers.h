@@ -9,7 +9,8 @@ namespace lw::view {
 double draw_grid(ImDrawList& draw, const View& view, const panel::Theme& theme, float least_px);
 
 /// The tape with its edge, its rounded corners, and arrows that point along the course.
-void add_tape(Mesh& mesh, const LineShape& shape, const View& view, double width_mm, const panel::Theme& theme);
+void add_tape(Mesh& mesh, const LineShape& shape, const View& view, double width_mm,
+              const panel::Theme& theme);
 void add_arrows(Mesh& mesh, const Centreline& line, const View& view, double width_mm, ImU32 colour,
                 float apart_px);
 

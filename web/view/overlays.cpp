@@ -66,7 +66,8 @@ void draw_bubble(const Bench& bench, Pixel at, std::string_view text, ImU32 colo
   const float unit = bench.unit, pad = 7 * unit;
   const Frame& frame = bench.floor.view.frame;
   const float wrap = std::min(340 * unit, frame.width - 40);
-  const ImVec2 size = font->CalcTextSizeA(text_size(font, unit), 1e9f, wrap, text.data(), text.data() + text.size());
+  const ImVec2 size =
+      font->CalcTextSizeA(text_size(font, unit), 1e9f, wrap, text.data(), text.data() + text.size());
   // Above a finger that would hide it, beside a mouse pointer.
   const float lift = bench.pointer.reach > 15 ? 54 * unit : 16 * unit;
   const ImVec2 room{size.x + 2 * pad, size.y + 1.4f * pad};
@@ -86,7 +87,8 @@ void draw_footer(const Bench& bench, double grid_mm, std::string_view hint) {
   const Frame& f = bench.floor.view.frame;
   const float height = footer_height(bench), top = f.y + f.height - height, middle = top + 0.5f * height;
   const float pad = 12 * bench.unit;
-  bench.draw.AddRectFilled({f.x, top}, {f.x + f.width, f.y + f.height}, panel::faded(bench.theme.ground, 0.82f));
+  bench.draw.AddRectFilled({f.x, top}, {f.x + f.width, f.y + f.height},
+                           panel::faded(bench.theme.ground, 0.82f));
   float left = f.x + f.width - pad;
   if (panel::has_drive(bench.desk)) left = draw_legend(bench, left, middle) - 2.2f * pad;
   left = draw_scale(bench, left, middle, grid_mm) - 2 * pad;

@@ -82,9 +82,12 @@ void work_gaps(Bench& bench) {
   if ((held.grip == Grip::new_gap || held.grip == Grip::gap_end) && hand.held && moving(bench)) {
     follow(bench);
     const double length = 1e3 * held.ground->line.length, now = 1e3 * (held.s + held.travel);
-    const auto wrapped = [&](double s) { return held.ground->line.closed ? s - length * std::floor(s / length) : s; };
+    const auto wrapped = [&](double s) {
+      return held.ground->line.closed ? s - length * std::floor(s / length) : s;
+    };
     if (held.grip == Grip::gap_end) {
-      attempt(bench, with_gap_end(held.base, static_cast<std::size_t>(held.index), held.far_end, now, length));
+      attempt(bench,
+              with_gap_end(held.base, static_cast<std::size_t>(held.index), held.far_end, now, length));
     } else {
       const double from = std::min(1e3 * held.s, now), to = std::max(1e3 * held.s, now);
       attempt(bench, with_gap(held.base, wrapped(from), wrapped(to), length));

@@ -1,4 +1,5 @@
 // Looking: the floor is moved with the hand, the path and the vehicle are moved along in time.
+#include <cmath>
 #include <cstdio>
 
 #include "web/page/typeface.h"
@@ -26,7 +27,9 @@ void say_what_is_here(const Bench& bench, std::size_t row) {
   const double off = 1e3 * here.deviation;
   char text[96];
   std::snprintf(text, sizeof text, "%.2f s   %.2f m   %.1f mm %s", here.t, here.progress, std::fabs(off),
-                off > 0 ? "left" : off < 0 ? "right" : "");
+                off > 0   ? "left"
+                : off < 0 ? "right"
+                          : "");
   const Pixel at = to_screen(bench.floor.view, bench.floor.path.x[row], bench.floor.path.y[row]);
   bench.draw.AddCircleFilled(vec(at), 5.0f * bench.unit, bench.theme.text);
   draw_bubble(bench, at, text, bench.theme.text);

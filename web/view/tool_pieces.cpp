@@ -1,4 +1,5 @@
-// Exact pieces: chosen on the floor, changed by the handle at their end and, for bends, the one at their middle.
+// Exact pieces: chosen on the floor, changed by the handle at their end and, for bends, the one at their
+// middle.
 #include <algorithm>
 #include <cmath>
 #include <numbers>
@@ -39,7 +40,8 @@ Point middle_of_arc(const Course& course, std::size_t index) {
 Piece reshaped(const Course& course, std::size_t index, Point p, bool middle) {
   const Piece& piece = course.pieces[index];
   const Joint from = joints_of(course)[index];
-  if (piece.straight_mm) return straight_of(std::max(tidy(straight_towards(course, index, p, shortest_mm), 5.0), 5.0));
+  if (piece.straight_mm)
+    return straight_of(std::max(tidy(straight_towards(course, index, p, shortest_mm), 5.0), 5.0));
   if (middle) {
     const Point u = middle_per_radius(from, *piece.turn_deg);
     const double along = (p.x_mm - from.at.x_mm) * u.x_mm + (p.y_mm - from.at.y_mm) * u.y_mm;
@@ -74,8 +76,10 @@ void draw_pieces(const Bench& bench, int chosen) {
   const std::vector<Joint> joints = joints_of(bench.course());
   for (const Joint& joint : joints) {
     const double normal = joint.heading_deg * per_degree;
-    const float half = std::max(6.0f, static_cast<float>(0.5 * bench.course().line_mm * bench.floor.view.scale) + 3);
-    const auto nx = half * static_cast<float>(std::sin(normal)), ny = half * static_cast<float>(std::cos(normal));
+    const float half =
+        std::max(6.0f, static_cast<float>(0.5 * bench.course().line_mm * bench.floor.view.scale) + 3);
+    const auto nx = half * static_cast<float>(std::sin(normal)),
+               ny = half * static_cast<float>(std::cos(normal));
     const Pixel at = screen_of(bench, joint.at);
     bench.draw.AddLine({at.x - nx, at.y - ny}, {at.x + nx, at.y + ny}, bench.theme.text, 2.0f);
   }

@@ -1,4 +1,5 @@
-// The tools of the floor: a strip of them down its left edge, and along its upper edge what the chosen one offers.
+// The tools of the floor: a strip of them down its left edge, and along its upper edge what the chosen one
+// offers.
 #pragma once
 
 #include <string_view>

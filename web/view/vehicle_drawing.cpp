@@ -31,7 +31,7 @@ struct Pen {
   }
   /// A plate with cut corners.
   void plate(double back, double front, double half, double cut, ImU32 face, ImU32 edge) const {
-    const ImVec2 outline[] = {at(back, half - cut), at(back + cut, half), at(front - cut, half),
+    const ImVec2 outline[] = {at(back, half - cut),  at(back + cut, half),  at(front - cut, half),
                               at(front, half - cut), at(front, cut - half), at(front - cut, -half),
                               at(back + cut, -half), at(back, cut - half)};
     draw.AddConvexPolyFilled(outline, 8, face);
@@ -90,7 +90,8 @@ void draw_sensors(const Pen& pen, const Sensors& s, std::span<const double> read
     const double aside = s.lateral_mm.size() < 2 ? 0.0 : (outer_left ? 8.0 : -8.0) / pen.view.scale;
     const ImVec2 p = pen.at(out, s.lateral_mm[i] + aside);
     pen.draw.AddRectFilled({p.x - 0.5f * extent.x - 3, p.y - 0.5f * extent.y},
-                           {p.x + 0.5f * extent.x + 3, p.y + 0.5f * extent.y}, panel::faded(t.surface, 0.85f), 3);
+                           {p.x + 0.5f * extent.x + 3, p.y + 0.5f * extent.y}, panel::faded(t.surface, 0.85f),
+                           3);
     pen.draw.AddText(font, size, {p.x - 0.5f * extent.x, p.y - 0.5f * extent.y}, t.text, text);
   }
 }

@@ -1,8 +1,8 @@
 // The vehicle from above at one moment of the drive.
 //
-// Track width, wheel diameters, sensor places and spots are to scale. Chassis and tyre width are not in a scenario;
-// they are drawn in proportion. Beside each wheel stands a gauge: the bar is the command, from the middle forward
-// or back, full length = 100 %; the notch is the speed the wheel really has.
+// Track width, wheel diameters, sensor places and spots are to scale. Chassis and tyre width are not in a
+// scenario; they are drawn in proportion. Beside each wheel stands a gauge: the bar is the command, from the
+// middle forward or back, full length = 100 %; the notch is the speed the wheel really has.
 #pragma once
 
 #include <imgui.h>
