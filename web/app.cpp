@@ -13,6 +13,7 @@
 #include "web/panel/layout.h"
 #include "web/panel/panel.h"
 #include "web/panel/play.h"
+#include "web/view/floor_view.h"
 
 namespace lw::app {
 namespace {
@@ -22,6 +23,7 @@ using panel::Box;
 struct App {
   panel::Desk desk;
   panel::PanelState state;
+  view::FloorView floor;
   std::vector<panel::LibraryEntry> library;
   double last_frame = 0.0;  // host::seconds()
   bool touched = false;     // a finger was seen
@@ -103,6 +105,7 @@ void draw_parts(App& app) {
   panel::draw_headline(ui, desk.layout.top);
   panel::draw_play(ui, desk.layout.play);
   panel::draw_charts(ui, desk.layout.charts);
+  view::show_floor(app.floor, desk);
   panel::draw_notice(ui, desk.layout.floor);
 }
 
@@ -155,6 +158,7 @@ void pinch(const Pinch& pinch) {
   if (pinch.phase == Pinch::began)
     app.pinched = desk.layout.charts.holds(pinch.x, pinch.y) ? desk.layout.charts : Box{};
   app.touched = true;
+  if (app.pinched.width == 0) view::pinch_floor(app.floor, desk, pinch);
   if (app.pinched.width > 0) {
     panel::Ui ui{desk, app.state};
     panel::pinch_charts(ui, app.pinched, pinch);

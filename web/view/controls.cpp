@@ -110,7 +110,7 @@ std::optional<double> number_entry(Flow& flow, const Measure& m, double value) {
   ImGui::PushStyleVar(ImGuiStyleVar_FramePadding, {4 * unit, 0.5f * (height - line)});
   ImGui::PushStyleVar(ImGuiStyleVar_FrameRounding, 0.0f);
   double typed = value;
-  if (ImGui::InputDouble("value", &typed, 0, 0, "%.6g", ImGuiInputTextFlags_AutoSelectAll) &&
+  if (ImGui::InputDouble("##value", &typed, 0, 0, "%.6g", ImGuiInputTextFlags_AutoSelectAll) &&
       typed != value && std::isfinite(typed))
     now = typed;
   ImGui::PopStyleVar(2);

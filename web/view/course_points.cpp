@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <numeric>
 
+#include "engine/course/stroke.h"
 #include "engine/scenario/fields.h"
 #include "web/view/course_gaps.h"
 #include "web/view/tidy.h"
@@ -17,6 +18,15 @@ Error wrong_kind() {
 }
 Error no_point(std::size_t index) {
   return {"course.points_mm[" + std::to_string(index) + "]", "", "there is no such point"};
+}
+
+/// What counts as one place, as straight, as long enough, for a hand that trembles by `coarse` mm.
+StrokeSettings settings_for(double coarse) {
+  StrokeSettings settings;
+  settings.tolerance_mm = std::max(coarse, 0.5);
+  settings.closing_mm = std::max(10.0 * coarse, 15.0);
+  settings.length_least_mm = std::max(10.0 * coarse, 30.0);
+  return settings;
 }
 
 bool made_of_pieces(const Scenario& scenario) { return !scenario.course.pieces.empty(); }
@@ -88,6 +98,45 @@ Result<Scenario> with_corner(const Scenario& scenario, std::size_t index, bool s
     corners.insert(std::upper_bound(corners.begin(), corners.end(), static_cast<int>(index)),
                    static_cast<int>(index));
   carry_point_gaps(out.course, scenario.course, {});
+  return out;
+}
+
+Result<Scenario> with_stroke(const Scenario& scenario, std::span<const Point> stroke, double coarse) {
+  Result<Stroke> drawn = simplify_stroke({stroke.begin(), stroke.end()}, settings_for(coarse));
+  if (!drawn) return drawn.error();
+  Scenario out = scenario;
+  const double line_mm = out.course.line_mm;
+  out.course = {};
+  out.course.line_mm = line_mm;
+  out.course.closed = drawn->closed;
+  out.course.points_mm = std::move(drawn->points_mm);
+  out.course.corners = std::move(drawn->corners);
+  return out;
+}
+
+Result<Scenario> with_stroke_appended(const Scenario& scenario, std::span<const Point> stroke,
+                                      double coarse) {
+  if (made_of_pieces(scenario)) return wrong_kind();
+  if (scenario.course.closed || scenario.course.points_mm.empty())
+    return Error{"course", "", "only an open course has an end to carry on from"};
+  // From the last point itself, wherever near it the hand came down.
+  std::vector<Point> places(stroke.begin(), stroke.end());
+  if (!places.empty()) places.front() = scenario.course.points_mm.back();
+  const Result<Stroke> drawn = simplify_stroke(places, settings_for(coarse));
+  if (!drawn) return drawn.error();
+  if (drawn->closed)
+    return Error{"course", "", "a loop that comes back to the end of the course is not carried on"};
+  Scenario out = scenario;
+  Course& course = out.course;
+  const int before = static_cast<int>(course.points_mm.size());
+  if (course.points_mm.size() + drawn->points_mm.size() - 1 > most_points)
+    return Error{"course.points_mm", "", "the course has too many points already"};
+  course.points_mm.insert(course.points_mm.end(), drawn->points_mm.begin() + 1, drawn->points_mm.end());
+  for (const int corner : drawn->corners)
+    if (corner > 0) course.corners.push_back(before - 1 + corner);
+  std::vector<int> same(static_cast<std::size_t>(before));
+  std::iota(same.begin(), same.end(), 0);
+  carry_point_gaps(course, scenario.course, same);
   return out;
 }
 
