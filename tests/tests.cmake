@@ -28,7 +28,6 @@ endif()
 
 add_executable(linewright_tests ${test_sources})
 target_link_libraries(linewright_tests PRIVATE warnings engine)
-target_compile_options(linewright_tests PRIVATE -Wno-conversion)
 # The folder of the repository, so that tests find scenarios/ and the fixtures wherever they are run from.
 target_compile_definitions(linewright_tests PRIVATE LINEWRIGHT_SOURCE_DIR="${CMAKE_SOURCE_DIR}"
                            LINEWRIGHT_BINARY_DIR="${CMAKE_BINARY_DIR}")

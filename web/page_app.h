@@ -12,7 +12,8 @@
 
 namespace lw::app {
 
-/// Called once, after Dear ImGui and the typeface are ready and before the first frame().
+/// Called once, after Dear ImGui and the typeface are ready and before the first frame(). Called again (tests
+/// do, each with a fresh Dear ImGui) it begins anew, with nothing left of before.
 void start();
 
 /// Draws one frame, between ImGui::NewFrame() and ImGui::Render(). Returns true when the next frame will look

@@ -11,6 +11,7 @@
 // flight.
 #pragma once
 
+#include <cmath>
 #include <vector>
 
 #include "engine/drive/progress.h"

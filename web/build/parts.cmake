@@ -1,6 +1,6 @@
-# zlib, SDL and Dear ImGui from the sources that web/build/parts has fetched. Included by the top CMakeLists.txt:
-# for a native build only Dear ImGui, without a backend, so that the panel's tests run without a window.
-# Warnings in other people's sources are theirs: -w.
+# zlib, SDL and Dear ImGui from the sources that web/build/parts has fetched. Included by the top
+# CMakeLists.txt: for a native build only Dear ImGui, without a backend, so that the panel's tests run without
+# a window. Warnings in other people's sources are theirs: -w.
 
 include_guard()
 if(NOT EXISTS "${LINEWRIGHT_PARTS}/pins")
@@ -25,8 +25,8 @@ target_include_directories(zlib SYSTEM PUBLIC ${zlib_root})
 target_compile_options(zlib PRIVATE -w)
 add_library(ZLIB::ZLIB ALIAS zlib)
 
-# SDL's own configure takes minutes under Emscripten and settles nothing: its header for Emscripten is chosen by
-# itself. Only window, events and the GL context are wanted, so the other parts stay out.
+# SDL's own configure takes minutes under Emscripten and settles nothing: its header for Emscripten is chosen
+# by itself. Only window, events and the GL context are wanted, so the other parts stay out.
 set(sdl_root ${LINEWRIGHT_PARTS}/sdl)
 set(sdl_src ${sdl_root}/src)
 file(GLOB sdl_sources ${sdl_src}/*.c ${sdl_src}/atomic/*.c ${sdl_src}/cpuinfo/*.c ${sdl_src}/dynapi/*.c
@@ -43,7 +43,8 @@ foreach(part AUDIO JOYSTICK HAPTIC HIDAPI SENSOR POWER RENDER LOADSO)
   target_compile_definitions(sdl PRIVATE SDL_${part}_DISABLED=1)
 endforeach()
 
-# node 18 and later have a global fetch() that Emscripten 3.1.6 takes for a browser's: everything in one file then.
+# node 18 and later have a global fetch() that Emscripten 3.1.6 takes for a browser's: everything in one file
+# then.
 set(node_link_options -O1 -sENVIRONMENT=node -sSINGLE_FILE=1 -sALLOW_MEMORY_GROWTH=1 -sEXIT_RUNTIME=1
     -sNODERAWFS=1)
 # Emscripten's own scripts need the modules of Debian's node, which another node does not look for by itself.

@@ -1,15 +1,20 @@
-// Serves a folder on 127.0.0.1: node server.mjs FOLDER [PORT]   (0 = any free port; prints the address)
+// Serves a folder on 127.0.0.1 and prints the address: node server.mjs FOLDER [PORT [fixed]]
+// PORT 0, or none: any free one. A port that is taken gives way to a free one, unless it is fixed.
 import { createReadStream } from 'node:fs';
 import { stat } from 'node:fs/promises';
 import { createServer } from 'node:http';
 import { extname, join, resolve, sep } from 'node:path';
 
 const types = {
-  '.html': 'text/html; charset=utf-8', '.css': 'text/css; charset=utf-8', '.js': 'text/javascript; charset=utf-8',
-  '.wasm': 'application/wasm', '.txt': 'text/plain; charset=utf-8', '.toml': 'text/plain; charset=utf-8',
+  '.html': 'text/html; charset=utf-8',
+  '.css': 'text/css; charset=utf-8',
+  '.js': 'text/javascript; charset=utf-8',
+  '.wasm': 'application/wasm',
+  '.txt': 'text/plain; charset=utf-8',
 };
 const folder = resolve(process.argv[2] ?? '.');
 const port = Number(process.argv[3] ?? 0);
+const fixed = process.argv[4] === 'fixed';
 
 async function answer(request, response) {
   const refuse = (code, words) => response.writeHead(code, { 'content-type': 'text/plain' }).end(words);
@@ -35,7 +40,9 @@ const server = createServer((request, response) => {
   answer(request, response).catch((fault) => response.destroy(fault));
 });
 server.on('error', (fault) => {
+  if (fault.code === 'EADDRINUSE' && !fixed) return server.listen(0, '127.0.0.1');
   console.error(`cannot serve on port ${port}: ${fault.message}`);
-  process.exit(1);
+  return process.exit(1);
 });
-server.listen(port, '127.0.0.1', () => console.log(`http://127.0.0.1:${server.address().port}/`));
+server.on('listening', () => console.log(`http://127.0.0.1:${server.address().port}/`));
+server.listen(port, '127.0.0.1');

@@ -11,7 +11,8 @@
 EM_JS(int, ask_page, (const char* what, int number, const char* a, int a_size, const char* b, int b_size,
                       const char* c, int c_size), {
   const bytes = (at, size) => HEAPU8.slice(at, at + size);
-  return Number(Module['host'][UTF8ToString(what)](bytes(a, a_size), bytes(b, b_size), bytes(c, c_size), number)) || 0;
+  const asked = Module['host'][UTF8ToString(what)];
+  return Number(asked(bytes(a, a_size), bytes(b, b_size), bytes(c, c_size), number)) || 0;
 })
 /// Calls Module.host[what](first); its answer is a text, copied into memory that the caller frees.
 EM_JS(char*, ask_text, (const char* what, const char* a, int a_size), {

@@ -1,5 +1,5 @@
-// The browser's side of the page: starts the module, wakes it when something happened, and does for it what only a
-// browser can (files, clipboard, storage, address, workers). The other side is web/page/main.cpp.
+// The browser's side of the page: starts the module, wakes it when something happened, and does for it what
+// only a browser can (files, clipboard, storage, address, workers). The other side is web/page/main.cpp.
 //
 // The same text serves the folder (modules fetched beside it) and the single file (modules inside the page).
 'use strict';
@@ -13,7 +13,7 @@
   const decode = (bytes) => new TextDecoder().decode(bytes);
   let page = null;  // the module, once started
 
-  // ---- what a person is told before the page can draw, or when it no longer can --------------------------------
+  // ---- what a person is told before the page can draw, or when it no longer can ---------------------------
   function stop(words) {
     document.getElementById('words').textContent = words;
     const notice = document.getElementById('notice');
@@ -30,7 +30,7 @@
     }
   }
 
-  // ---- parts: beside the page, or inside it ----------------------------------------------------------------------
+  // ---- parts: beside the page, or inside it ---------------------------------------------------------------
   async function bytesOf(name) {
     const inside = document.getElementById(name);
     if (!inside) {
@@ -67,7 +67,7 @@
     return decode(page.HEAPU8.slice(at, end));
   }
 
-  // ---- frames: only after something happened -------------------------------------------------------------------
+  // ---- frames: only after something happened --------------------------------------------------------------
   const again = 1, wantsText = 2;
   const framesAfterEvent = 3;  // Dear ImGui settles what is hovered and how large it is within three
   let framesLeft = 0, scheduled = false, timers = [], wantedText = false;
@@ -79,7 +79,12 @@
     schedule();
     timers.forEach(clearTimeout);
     // Tooltips come some time after the last movement; two looks cover both of their delays.
-    timers = [250, 700].map((delay) => setTimeout(() => { framesLeft = Math.max(framesLeft, 2); schedule(); }, delay));
+    timers = [250, 700].map((delay) => setTimeout(look, delay));
+  }
+
+  function look() {
+    framesLeft = Math.max(framesLeft, 2);
+    schedule();
   }
 
   function schedule() {
@@ -90,7 +95,8 @@
 
   function draw() {
     if (!page) return;
-    const now = { width: canvas.clientWidth, height: canvas.clientHeight, ratio: window.devicePixelRatio || 1 };
+    const ratio = window.devicePixelRatio || 1;
+    const now = { width: canvas.clientWidth, height: canvas.clientHeight, ratio };
     if (now.width !== shown.width || now.height !== shown.height || now.ratio !== shown.ratio) {
       shown = now;
       window.dispatchEvent(new Event('resize'));  // SDL listens to this one alone
@@ -112,19 +118,22 @@
     else if (wants & wantsText) timers.push(setTimeout(schedule, 400));  // the blinking cursor
   }
 
-  for (const type of ['pointerdown', 'pointermove', 'pointerup', 'pointercancel', 'wheel', 'keydown', 'keyup', 'touchstart',
-                      'touchmove', 'touchend', 'focus', 'blur', 'resize', 'mouseout', 'visibilitychange']) {
+  const waking = ['pointerdown', 'pointermove', 'pointerup', 'pointercancel', 'mouseout', 'wheel', 'keydown',
+                  'keyup', 'touchstart', 'touchmove', 'touchend', 'focus', 'blur', 'resize',
+                  'visibilitychange'];
+  for (const type of waking) {
     window.addEventListener(type, wake, { capture: true, passive: true });
   }
   new ResizeObserver(wake).observe(canvas);
 
-  // ---- keyboard ------------------------------------------------------------------------------------------------
+  // ---- keyboard -------------------------------------------------------------------------------------------
   const filler = '..';  // so that a soft keyboard's backspace has something to delete
   const emptyKeys = () => { keys.value = filler; keys.setSelectionRange(filler.length, filler.length); };
 
   function takeKeyboard(wanted) {
     keys.inputMode = wanted ? 'text' : 'none';
-    if (wanted !== wantedText && wanted && matchMedia('(pointer: coarse)').matches) keys.blur();  // or it stays down
+    const touch = matchMedia('(pointer: coarse)').matches;
+    if (wanted && !wantedText && touch) keys.blur();  // or the soft keyboard stays down
     wantedText = wanted;
     if (document.activeElement !== keys) {
       keys.focus({ preventScroll: true });
@@ -153,11 +162,12 @@
     wake();
   });
 
-  // SDL would swallow every key with Ctrl, Tab and the function keys. The page has a few of its own; all others
-  // stay the browser's. Typed text comes through the text field above, so SDL need not see it a second time.
-  const ours = new Set(['KeyA', 'KeyC', 'KeyX', 'KeyY', 'KeyZ', 'KeyS', 'KeyO', 'Home', 'End', 'ArrowLeft', 'ArrowRight',
-                        'ArrowUp', 'ArrowDown', 'Delete', 'Backspace', 'Enter', 'ControlLeft', 'ControlRight',
-                        'MetaLeft', 'MetaRight']);
+  // SDL would swallow every key with Ctrl, Tab and the function keys. The page has a few of its own; all
+  // others stay the browser's. Typed text comes through the text field above, so SDL need not see it a second
+  // time.
+  const ours = new Set(['KeyA', 'KeyC', 'KeyX', 'KeyY', 'KeyZ', 'KeyS', 'KeyO', 'Home', 'End', 'Enter',
+                        'Delete', 'Backspace', 'ArrowLeft', 'ArrowRight', 'ArrowUp', 'ArrowDown',
+                        'ControlLeft', 'ControlRight', 'MetaLeft', 'MetaRight']);
   const heldUnderMeta = new Set();
   window.addEventListener('keydown', (event) => {
     const command = event.ctrlKey || event.metaKey;
@@ -174,17 +184,20 @@
   window.addEventListener('keyup', (event) => {
     // Under macOS no key comes up while Command is held.
     if (!event.key.startsWith('Meta')) return;
-    for (const code of heldUnderMeta) window.dispatchEvent(new KeyboardEvent('keyup', { code, key: code.slice(3) }));
+    for (const code of heldUnderMeta) {
+      window.dispatchEvent(new KeyboardEvent('keyup', { code, key: code.slice(3) }));
+    }
     heldUnderMeta.clear();
   }, { capture: true });
   window.addEventListener('keypress', (event) => event.stopImmediatePropagation(), { capture: true });
   canvas.addEventListener('contextmenu', (event) => event.preventDefault());
 
-  // ---- files ---------------------------------------------------------------------------------------------------
+  // ---- files ----------------------------------------------------------------------------------------------
   async function take(one) {
     const name = encode(one.name);
     if (one.size > largestFile) {
-      call('_page_file_refused', name, encode(`it has ${Math.round(one.size / 1048576)} MB; at most 16 can be taken.`));
+      const size = Math.round(one.size / 1048576);
+      call('_page_file_refused', name, encode(`it has ${size} MB; at most 16 can be taken.`));
     } else {
       try {
         call('_page_file', name, new Uint8Array(await one.arrayBuffer()));
@@ -208,13 +221,14 @@
     wake();
   });
 
-  // ---- workers: one a job, so that cancelling is ending it -------------------------------------------------------
+  // ---- workers: one a job, so that cancelling is ending it ------------------------------------------------
   const jobs = new Map();
   let workerParts = null;  // promise of {address, module}
 
   async function prepareWorkers() {
     const sources = await Promise.all(['worker_module.js', 'worker.js'].map(bytesOf));
-    const address = URL.createObjectURL(new Blob([sources[0], '\n', sources[1]], { type: 'text/javascript' }));
+    const script = new Blob([sources[0], '\n', sources[1]], { type: 'text/javascript' });
+    const address = URL.createObjectURL(script);
     return { address, module: await WebAssembly.compile(await bytesOf('worker_module.wasm')) };
   }
 
@@ -242,7 +256,9 @@
           ended(data.ended);
         }
       };
-      entry.worker.onerror = (fault) => ended(`the worker cannot run: ${fault.message || 'blocked by the browser'}`);
+      entry.worker.onerror = (fault) => {
+        ended(`the worker cannot run: ${fault.message || 'blocked by the browser'}`);
+      };
       entry.worker.postMessage({ module, request }, [request.buffer]);
     } catch (fault) {
       workerParts = null;
@@ -256,7 +272,7 @@
     if (entry && entry.worker) entry.worker.terminate();
   }
 
-  // ---- what the application asks for (web/host.h) --------------------------------------------------------------
+  // ---- what the application asks for (web/host.h) ---------------------------------------------------------
   function copyWithField(text) {  // where the clipboard's own interface is refused
     const field = document.createElement('textarea');
     field.value = text;
@@ -318,14 +334,14 @@
     wake();
   }
 
-  // ---- start ---------------------------------------------------------------------------------------------------
+  // ---- start ----------------------------------------------------------------------------------------------
   async function start() {
     if (typeof WebAssembly !== 'object' || typeof DecompressionStream !== 'function') {
       return stop('This browser is too old for Linewright. One of 2023 or later will do.');
     }
     if (!hasGraphics()) {
       return stop('Linewright draws with WebGL 2, which this browser does not offer here.\n' +
-                  'Often it is switched off in the settings (hardware acceleration), or the browser is an old one.');
+                  'Often it is switched off in the settings (hardware acceleration), or the browser is old.');
     }
     const module = await WebAssembly.compile(await bytesOf('page_module.wasm'));
     page = await linewrightPage({
@@ -338,12 +354,15 @@
         return {};
       },
     });
-    if (!page._page_start(window.devicePixelRatio || 1)) return stop('The browser gave no graphics to draw with.');
+    if (!page._page_start(window.devicePixelRatio || 1)) {
+      return stop('The browser gave no graphics to draw with.');
+    }
     page._page_mac_keys(/^Mac|^iP/.test(navigator.platform));
     if (location.hash.length > 1) tellFragment();
     window.addEventListener('hashchange', tellFragment);
     canvas.addEventListener('webglcontextlost', () => {
-      stop('The browser took the graphics away, often after a sleep.\nWhat you had is kept; load the page again.');
+      stop('The browser took the graphics away, often after a sleep.\n' +
+           'What you had is kept; load the page again.');
     });
     wake();
     draw();

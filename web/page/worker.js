@@ -1,5 +1,5 @@
-// One job beside the page. It follows the engine's module in the same Blob, so linewrightWorker is known here.
-// Receives {module, request} once; sends {message} any number of times, then {ended}.
+// One job beside the page. It follows the engine's module in the same Blob, so linewrightWorker is known
+// here. Receives {module, request} once; sends {message} any number of times, then {ended}.
 'use strict';
 
 self.onmessage = async (event) => {
