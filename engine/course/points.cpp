@@ -147,15 +147,19 @@ Result<bool> check_bends(const Course& course, const Centreline& line,
   return true;
 }
 
-/// From the curvature at each sample to the mean until the next; a corner's own turn does not count.
+/// From the curvature at each sample to the mean until the next, which is the turn of the tangent over the
+/// pitch. Before a corner the curvature at the sample has to do.
 void hold_means(Centreline& line) {
   const std::size_t n = line.nodes.size();
-  const double first = line.nodes.front().curvature;
-  for (std::size_t i = 0; i < n; ++i) {
+  for (std::size_t i = 0; i + (line.closed ? 0 : 1) < n; ++i) {
+    Node& node = line.nodes[i];
+    const Node& next = line.nodes[(i + 1) % n];
     if (!line.corners.empty() && corner_follows(line, i)) continue;
-    if (i + 1 == n && !line.closed) continue;
-    line.nodes[i].curvature =
-        0.5 * (line.nodes[i].curvature + (i + 1 < n ? line.nodes[i + 1].curvature : first));
+    const double s = node.tangent_x * next.tangent_y - node.tangent_y * next.tangent_x;
+    const double c = node.tangent_x * next.tangent_x + node.tangent_y * next.tangent_y;
+    const double q = s * s;  // the arcsine's series; its next term is below 1e-11 here
+    const double small = s * (1.0 + q * (1.0 / 6.0 + q * (3.0 / 40.0 + q * (15.0 / 336.0))));
+    node.curvature = (q < 0.01 ? small : direction_angle(c, s)) / line.pitch;
   }
 }
 
