@@ -51,7 +51,11 @@ Summary drive(const Plan& plan, Trace* trace, std::uint64_t number) {
   const Setup<double> setup = setup_of(plan);
   CommandQueue<double> queue;
   if (setup.wiring.delay) queue.entries.resize(static_cast<std::size_t>(setup.wiring.queue_length));
-  if (trace) *trace = {setup.wiring.sensors.count, {}, {}};
+  if (trace) {  // keeps the memory of an earlier trace: a screen drives again for every change
+    trace->sensors = setup.wiring.sensors.count;
+    trace->rows.clear();
+    trace->readings.clear();
+  }
 
   State<double> state = start(setup, number);
   for (double start_progress = NAN;;) {

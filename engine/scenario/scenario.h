@@ -72,9 +72,9 @@ struct Controller {
 /// One exact piece of a course: a straight (straight_mm > 0), or a bend of radius_mm through turn_deg (+
 /// left). A radius of 0 is a sharp corner.
 struct Piece {
-  std::optional<double> straight_mm;
-  std::optional<double> radius_mm;
-  std::optional<double> turn_deg;
+  std::optional<double> straight_mm{};
+  std::optional<double> radius_mm{};
+  std::optional<double> turn_deg{};
 };
 
 struct Point {
