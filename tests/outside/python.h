@@ -28,7 +28,7 @@ inline std::string outside_script(const std::string& name) {
 
 /// A file of the build folder with these bytes; returns its path.
 inline std::string saved(const std::string& name, const std::string& bytes) {
-  const std::string path = std::string(LINEWRIGHT_BINARY_DIR) + "/" + name;
+  const std::string path = LINEWRIGHT_BINARY_DIR "/" + name;
   std::ofstream file(path, std::ios::binary);
   file << bytes;
   REQUIRE(file.flush());
