@@ -34,6 +34,9 @@ target_compile_definitions(linewright_tests PRIVATE LINEWRIGHT_SOURCE_DIR="${CMA
 target_precompile_headers(linewright_tests PRIVATE ${CMAKE_SOURCE_DIR}/tests/catch.h)
 # All of Catch2 2 is compiled in this one file; optimised, that takes longer than the engine.
 set_source_files_properties(tests/main.cpp PROPERTIES SKIP_PRECOMPILE_HEADERS ON COMPILE_OPTIONS -O0)
+if(TARGET page_ui)
+  target_sources(linewright_tests PRIVATE web/page/host_null.cpp)  # the panel's browser, played
+endif()
 foreach(room shell page_ui)
   if(TARGET ${room})
     target_link_libraries(linewright_tests PRIVATE ${room})

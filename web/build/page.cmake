@@ -26,7 +26,6 @@ add_library(page_ui STATIC ${page_ui_sources} web/page/typeface.cpp web/page/ite
 target_link_libraries(page_ui PRIVATE conversion_warnings PUBLIC engine imgui)
 
 if(NOT LINEWRIGHT_KIND STREQUAL "wasm")
-  target_sources(page_ui PRIVATE web/page/host_null.cpp)
   return()
 endif()
 
