@@ -137,8 +137,11 @@ bool frame() {
     panel::keep_in_browser(desk);
     app.unsaved = false;
   }
+  panel::keep_look(desk, app.state);
   return desk.animate;
 }
+
+float text_scale() { return the_app().desk.scale; }
 
 void fragment_changed(std::string_view fragment) { panel::take_text(the_app().desk, fragment, "link"); }
 

@@ -21,6 +21,10 @@ void start();
 /// refresh. After an event (mouse, key, touch, file, job, resize) the page draws a few frames by itself.
 bool frame();
 
+/// How large text is to be, 1 = the sizes of web/page/typeface.h. Asked before each frame; the page
+/// rasterises the typeface anew when it changes.
+float text_scale();
+
 /// The text behind # in the address, without #: at the start (when there is one) and when it changes later by
 /// a link opened in the same tab. Not called for what host::set_fragment() wrote.
 void fragment_changed(std::string_view fragment);

@@ -26,8 +26,8 @@ namespace {
 struct Page {
   SDL_Window* window = nullptr;
   SDL_GLContext context = nullptr;
-  float ratio = 0;
-  std::string clipboard;  // what Dear ImGui pastes
+  float ratio = 0, text_scale = 0;  // what the typeface was rasterised for
+  std::string clipboard;            // what Dear ImGui pastes
   lw::page::Fingers fingers;
 } page;
 
@@ -65,11 +65,12 @@ void set_up_imgui() {
   io.GetClipboardTextFn = get_clipboard;
 }
 
-void set_ratio(float ratio) {
-  if (ratio == page.ratio) return;
+void set_type(float ratio, float text_scale) {
+  if (ratio == page.ratio && text_scale == page.text_scale) return;
   if (page.ratio != 0) ImGui_ImplOpenGL3_DestroyFontsTexture();
   page.ratio = ratio;
-  lw::page::load_typeface(ratio);
+  page.text_scale = text_scale;
+  lw::page::load_typeface(ratio, text_scale);
   ImGui_ImplOpenGL3_CreateFontsTexture();
 }
 
@@ -116,14 +117,14 @@ extern "C" {
 EMSCRIPTEN_KEEPALIVE bool page_start(float ratio) {
   if (!open_window()) return false;
   set_up_imgui();
-  set_ratio(ratio);
+  set_type(ratio, 1);
   lw::app::start();
   return true;
 }
 
 /// One frame; returns the sum of Wants. `ratio` is device pixels a CSS pixel.
 EMSCRIPTEN_KEEPALIVE int page_frame(float ratio) {
-  set_ratio(ratio);
+  set_type(ratio, lw::app::text_scale());
   take_events();
   lw::page::clear_items();
   ImGui_ImplOpenGL3_NewFrame();

@@ -44,15 +44,16 @@ ImFont* add(const unsigned char* data, unsigned size, float pixels, float digit_
 
 }  // namespace
 
-void load_typeface(float ratio) {
+void load_typeface(float ratio, float scale) {
   ratio = std::clamp(ratio, 0.5f, 4.0f);
+  scale = std::clamp(scale, 0.5f, 2.0f);
   ImGuiIO& io = ImGui::GetIO();
   io.Fonts->Clear();
   const auto regular = [&](float size) {
-    return add(typeface_regular, typeface_regular_size, std::round(size * ratio), width_of_0_regular);
+    return add(typeface_regular, typeface_regular_size, std::round(size * scale * ratio), width_of_0_regular);
   };
   const auto strong = [&](float size) {
-    return add(typeface_strong, typeface_strong_size, std::round(size * ratio), width_of_0_strong);
+    return add(typeface_strong, typeface_strong_size, std::round(size * scale * ratio), width_of_0_strong);
   };
   loaded.text = regular(18);
   loaded.small = regular(15);

@@ -17,9 +17,9 @@ struct Typeface {
 };
 
 /// Puts the typeface in the current Dear ImGui context, for `ratio` device pixels a CSS pixel (0.5 to 4).
-/// Sizes stay CSS pixels whatever the ratio. Call it between frames; fonts of an earlier call are gone
-/// afterwards.
-void load_typeface(float ratio);
+/// Sizes are those above times `scale` (0.5 to 2) whatever the ratio. Call it between frames; fonts of an
+/// earlier call are gone afterwards.
+void load_typeface(float ratio, float scale = 1.0f);
 
 /// The fonts of the last load_typeface(); null before the first.
 const Typeface& typeface();

@@ -112,10 +112,12 @@ std::optional<Scenario> kept_in_browser() {
   return std::move(*scenario);
 }
 
-void keep_look(const Desk& desk, const PanelState& state) {
+void keep_look(const Desk& desk, PanelState& state) {
   // "1 dark scale strips open", one word each; a later version that needs more begins with another number.
   const std::string text = std::string("1 ") + (desk.dark ? "1 " : "0 ") + number_text(desk.scale) + " " +
                            std::to_string(state.charts.shown) + (state.charts.open ? " 1" : " 0");
+  if (text == state.look_kept) return;
+  state.look_kept = text;
   host::store(look_key, text);
 }
 

@@ -39,8 +39,8 @@ void keep_in_browser(Desk& desk);
 /// The scenario of the last visit; nothing when there is none, or it cannot be read any more.
 std::optional<Scenario> kept_in_browser();
 
-/// How the page looks, kept apart from scenarios.
-void keep_look(const Desk& desk, const PanelState& state);
+/// How the page looks, kept apart from scenarios. Stores only what differs from what was stored last.
+void keep_look(const Desk& desk, PanelState& state);
 void restore_look(Desk& desk, PanelState& state);
 
 }  // namespace lw::panel

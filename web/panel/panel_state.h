@@ -55,6 +55,7 @@ struct PanelState {
   ChartState charts;
   bool pushing = false;  // a finger scrolls the panel
   bool library_open = false;
+  std::string look_kept;   // what was stored last of the page's look
   std::string link_entry;  // a link being typed or pasted
 };
 
