@@ -36,9 +36,13 @@ App& the_app() {
   return *app;
 }
 
+constexpr std::string_view first_file = "long_mixed.toml";
+
 /// What is on screen at the very first visit.
 Scenario first_scenario(const std::vector<panel::LibraryEntry>& library) {
-  if (!library.empty()) return library.front().scenario;
+  for (const panel::LibraryEntry& entry : library) {
+    if (entry.name == first_file) return entry.scenario;
+  }
   Scenario oval;
   oval.title = "Oval";
   const Piece straight{800.0, {}, {}}, bend{{}, 350.0, 180.0};
@@ -102,10 +106,11 @@ void draw_parts(App& app) {
   panel::take_keys(ui);
   panel::draw_panel(ui, desk.layout.panel, app.library);
   drive_again(app);  // what the panel changed is driven before anything of it is drawn
+  view::show_floor(app.floor, desk);
+  drive_again(app);
   panel::draw_headline(ui, desk.layout.top);
   panel::draw_play(ui, desk.layout.play);
   panel::draw_charts(ui, desk.layout.charts);
-  view::show_floor(app.floor, desk);
   panel::draw_notice(ui, desk.layout.floor);
 }
 
@@ -138,7 +143,7 @@ bool frame() {
     app.unsaved = false;
   }
   panel::keep_look(desk, app.state);
-  return desk.animate;
+  return desk.animate || desk.touched;
 }
 
 float text_scale() { return the_app().desk.scale; }
@@ -158,13 +163,15 @@ void text_pasted(std::string_view text) { panel::take_text(the_app().desk, text,
 void pinch(const Pinch& pinch) {
   App& app = the_app();
   panel::Desk& desk = app.desk;
-  if (pinch.phase == Pinch::began)
+  if (pinch.phase == Pinch::began) {
     app.pinched = desk.layout.charts.holds(pinch.x, pinch.y) ? desk.layout.charts : Box{};
+  }
   app.touched = true;
-  if (app.pinched.width == 0) view::pinch_floor(app.floor, desk, pinch);
   if (app.pinched.width > 0) {
     panel::Ui ui{desk, app.state};
     panel::pinch_charts(ui, app.pinched, pinch);
+  } else {
+    view::pinch_floor(app.floor, desk, pinch);
   }
 }
 

@@ -41,16 +41,21 @@ void gain_sheet(Ui& ui) {
   ImGui::Dummy({ui.px(300), y - at.y});
 }
 
-/// One figure with a button that copies it.
-void copy_line(Ui& ui, const char* name, const std::string& value, const char* button_label) {
+/// One figure that is copied when it, or the button beside it, is pressed. Its item carries the value as its
+/// label.
+void copy_line(Ui& ui, const char* name, const std::string& value) {
   const ImVec2 at = ImGui::GetCursorScreenPos();
+  const float left = ui.px(112), width = measure(ui, Type::text, value).x;
   const float y = at.y + (ui.row_height() - line_height(ui, Type::text)) / 2;
   put_text(ui, Type::text, {at.x + ui.px(11), y}, ui.colours().faint, name);
-  put_text(ui, Type::text, {at.x + ui.px(112), y}, ui.colours().text, value);
-  const float width = measure(ui, Type::text, button_label).x + ui.px(22);
-  ImGui::SetCursorScreenPos({at.x + ui.px(112) + measure(ui, Type::text, value).x + ui.px(12), at.y});
-  if (button(ui, (std::string(button_label) + "##" + name).c_str(), Weight::plain, width))
-    host::copy_text(value);
+  put_text(ui, Type::text, {at.x + left, y}, ui.colours().text, value);
+  ImGui::SetCursorScreenPos({at.x + left, at.y});
+  bool copy = ImGui::InvisibleButton((value + "##" + name).c_str(), {width, ui.row_height()});
+  ImGui::SameLine(0, ui.px(12));
+  copy = button(ui, (std::string("Copy##") + name).c_str()) || copy;
+  if (!copy) return;
+  host::copy_text(value);
+  say(ui.desk, std::string(name) + " copied.");
 }
 
 }  // namespace
@@ -86,8 +91,8 @@ void hand_over(Ui& ui) {
 
   if (!has_drive(desk)) return;
   title(ui, "Same bits everywhere");
-  copy_line(ui, "Trace hash", hash_text(desk.good.hash), "Copy");
-  copy_line(ui, "Steps", std::to_string(desk.good.summary.steps), "Copy");
+  copy_line(ui, "Trace hash", hash_text(desk.good.hash));
+  copy_line(ui, "Steps", std::to_string(desk.good.summary.steps));
   paragraph(ui, "The command line gives this hash for the same scenario.", ui.colours().faint);
 }
 

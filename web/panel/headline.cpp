@@ -83,6 +83,9 @@ void draw_headline(Ui& ui, const Box& box) {
   if (measure(ui, type, sentence, width).y > room) type = Type::strong;
   if (measure(ui, type, sentence, width).y > room) sentence = fitted(ui, type, sentence, width);
   put_text(ui, type, {x, box.y + ui.px(9)}, desk.error ? t.bad : t.text, sentence, width);
+  // An item of its own, so that the sentence can be read by whoever works the page by its labels.
+  ImGui::SetCursorScreenPos({x, box.y + ui.px(9)});
+  ImGui::InvisibleButton((sentence + "##headline").c_str(), measure(ui, type, sentence, width));
   if (!drawn) return;
 
   const bool compare = desk.kept.has_value() && desk.show_kept;
