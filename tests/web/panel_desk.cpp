@@ -1,4 +1,5 @@
-// The desk: history, the last good drive, the cursor. What is expected follows from web/panel/desk.h; no outside source.
+// The desk: history, the last good drive, the cursor. What is expected follows from web/panel/desk.h; no
+// outside source.
 #include "web/panel/desk.h"
 
 #include "engine/scenario/same.h"

@@ -64,7 +64,9 @@ TEST_CASE("the line of a number spans a useful part of a wide range and always h
 TEST_CASE("typed numbers may have a comma or a unit, and nothing that is no number passes") {
   CHECK(typed_number("0,25").value() == 0.25);
   CHECK(typed_number(" 12 mm").value() == 12.0);
-  CHECK(typed_number("\xE2\x88\x92" "3").value() == -3.0);
+  CHECK(typed_number("\xE2\x88\x92"
+                     "3")
+            .value() == -3.0);
   for (const char* text : {"", "mm", "nan", "inf", "1 2", "0x10", "1.2.3"}) {
     INFO(text);
     CHECK_FALSE(typed_number(text));
@@ -78,7 +80,9 @@ TEST_CASE("shown numbers read back") {
   }
   CHECK(shown_number(0.3, 0.005) == "0.300");
   CHECK(fixed(-0.001, 1) == "0.0");
-  CHECK(fixed(-2.0, 1) == "\xE2\x88\x92" "2.0");
+  CHECK(fixed(-2.0, 1) ==
+        "\xE2\x88\x92"
+        "2.0");
 }
 
 TEST_CASE("ticks are round and lie within") {

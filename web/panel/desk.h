@@ -92,7 +92,8 @@ struct Playback {
 };
 inline constexpr double play_rates[] = {0.25, 0.5, 1.0, 2.0, 4.0, 8.0};
 
-/// A short line that goes away by itself, or (bad) stays until the next one or until it is closed.
+/// A short line that goes away with the first frame after `until` (a page at rest draws none), or (bad) stays
+/// until the next one or until it is closed.
 struct Notice {
   std::string text;
   bool bad = false;

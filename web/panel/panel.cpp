@@ -225,6 +225,9 @@ void draw_notice(Ui& ui, const Box& floor) {
   const ImVec2 letters = measure(ui, Type::text, notice.text, wrap);
   const float height = std::max(letters.y + ui.px(16), close), width = letters.x + 2 * side + close;
   const ImVec2 at{floor.x + (floor.width - width) / 2, floor.bottom() - height - ui.px(46)};
+  // A child of its own: it lies over the floor, and takes the hand before it.
+  ImGui::SetCursorScreenPos(at);
+  ImGui::BeginChild("notice", {width, height}, ImGuiChildFlags_None, ImGuiWindowFlags_NoScrollbar);
   ImDrawList& draw = *ImGui::GetWindowDrawList();
   draw.AddRectFilled(at, {at.x + width, at.y + height}, t.surface, ui.px(4));
   draw.AddRect(at, {at.x + width, at.y + height}, notice.bad ? t.bad : t.rule, ui.px(4));
@@ -233,9 +236,8 @@ void draw_notice(Ui& ui, const Box& floor) {
   if (notice.bad) {
     ImGui::SetCursorScreenPos({at.x + width - close, at.y + (height - close) / 2});
     if (icon_button(ui, "Close message", Icon::cross)) notice = {};
-  } else {
-    ui.desk.animate = ui.desk.animate || ui.desk.now > notice.until - 0.1;
   }
+  ImGui::EndChild();
 }
 
 void take_keys(Ui& ui) {

@@ -38,20 +38,20 @@ std::vector<NumberField> free_fields(const Scenario& scenario) {
   return fields;
 }
 
-/// A choice of one number of the scenario; returns the path picked. `shown` is what the closed box says.
-std::optional<std::string> pick_field(Ui& ui, const char* id, const std::string& shown, float width) {
+/// A button that opens the list of the scenario's numbers; returns the path picked.
+std::optional<std::string> pick_field(Ui& ui, const char* label) {
   std::optional<std::string> picked;
-  ImGui::SetNextItemWidth(width);
-  ImGui::PushStyleVar(ImGuiStyleVar_FramePadding, {ui.px(8), (ui.row_height() - ImGui::GetFontSize()) / 2});
+  if (button(ui, label)) ImGui::OpenPopup(label);
   ImGui::PushStyleVar(ImGuiStyleVar_WindowPadding, {ui.px(8), ui.px(8)});
-  if (ImGui::BeginCombo(id, shown.c_str(), ImGuiComboFlags_HeightLarge)) {
+  ImGui::SetNextWindowSizeConstraints({ui.px(300), 0}, {ui.px(420), ui.px(420)});
+  if (ImGui::BeginPopup(label)) {
     for (const NumberField& field : free_fields(ui.desk.scenario)) {
       const std::string line = name_of_field(field) + "##" + field.path;
       if (ImGui::Selectable(line.c_str(), false, 0, {0, ui.row_height() * 0.8f})) picked = field.path;
     }
-    ImGui::EndCombo();
+    ImGui::EndPopup();
   }
-  ImGui::PopStyleVar(2);
+  ImGui::PopStyleVar();
   return picked;
 }
 
@@ -115,8 +115,7 @@ void spread_rows(Rows& rows, const FieldInfo& info) {
   }
   RowPlace place{rows.left, rows.top + ui.px(4), rows.width, 0, 0, 0};
   ImGui::SetCursorScreenPos({rows.left + ui.px(11), place.y});
-  if (const auto path = pick_field(ui, "##add tolerance", "Add a tolerance",
-                                   std::min(ui.px(330), rows.width - ui.px(11)))) {
+  if (const auto path = pick_field(ui, "Add a tolerance")) {
     edit(ui.desk, [&](Scenario& s) {
       for (const NumberField& field : number_fields(s)) {
         if (field.path == *path)
