@@ -6,13 +6,16 @@
 
 namespace lw {
 
+std::uint64_t hash_row(std::uint64_t hash, const Trace& trace, std::size_t row) {
+  for (const TraceColumn& column : trace_columns) hash = fnv_number(hash, trace.rows[row].*column.member);
+  const auto sensors = static_cast<std::size_t>(trace.sensors);
+  for (std::size_t i = 0; i < sensors; ++i) hash = fnv_number(hash, trace.readings[row * sensors + i]);
+  return hash;
+}
+
 std::uint64_t trace_hash(const Trace& trace) {
   std::uint64_t hash = fnv_start;
-  const double* reading = trace.readings.data();
-  for (const TraceRow& row : trace.rows) {
-    for (const TraceColumn& column : trace_columns) hash = fnv_number(hash, row.*column.member);
-    for (int i = 0; i < trace.sensors; ++i) hash = fnv_number(hash, *reading++);
-  }
+  for (std::size_t row = 0; row < trace.rows.size(); ++row) hash = hash_row(hash, trace, row);
   return hash;
 }
 

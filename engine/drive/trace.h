@@ -60,8 +60,11 @@ inline constexpr TraceColumn trace_columns[] = {
     {"right", &TraceRow::right, 1.0},
 };
 
-/// FNV-1a 64 over the bits of every field of every row in column order, then that row's readings; -0 counts
-/// as 0.
+/// Carries an FNV-1a 64 on over one row: the bits of every field in column order, then the row's readings; -0
+/// counts as 0. `row` < rows.
+std::uint64_t hash_row(std::uint64_t hash, const Trace& trace, std::size_t row);
+
+/// FNV-1a 64 over every row.
 std::uint64_t trace_hash(const Trace& trace);
 
 /// Where two traces first differ.
