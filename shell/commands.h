@@ -26,7 +26,8 @@ struct CheckCall {
 Answer check_command(const CheckCall& call);
 
 struct DescribeCall {
-  Input input;  // from empty: describes the keys themselves, with their defaults
+  Input input;
+  bool all_keys = false;  // describes the keys themselves, with their defaults, and no scenario
 };
 /// The whole scenario with its defaults, gains in both units, and figures that follow from it.
 Answer describe_command(const DescribeCall& call);

@@ -171,7 +171,7 @@ Answer one_scenario(const Loaded& loaded, const Plan& plan) {
 }  // namespace
 
 Answer describe_command(const DescribeCall& call) {
-  if (call.input.from.empty()) return all_keys();
+  if (call.all_keys) return all_keys();
   const auto loaded = load(call.input);
   if (!loaded) return refused(loaded.error());
   const auto plan = plan_of(*loaded);

@@ -35,7 +35,8 @@ Result<std::string> file_contents(const std::string& path) {
   if (std::filesystem::is_directory(path, ignored))
     return Error{path, "", "is a folder; a scenario is one file"};
   std::FILE* file = std::fopen(path.c_str(), "rb");
-  if (!file) return Error{clipped(path, 200), "", "cannot be opened: " + std::string(std::strerror(errno))};
+  const std::string shown = path.empty() ? "\"\"" : clipped(path, 200);
+  if (!file) return Error{shown, "", "cannot be opened: " + std::string(std::strerror(errno))};
   auto text = contents(file, path);
   std::fclose(file);
   return text;

@@ -77,7 +77,9 @@ void add_commands(Line& line) {
   CLI::App* describe = add_command(line, "describe", "The whole scenario with defaults and derived figures",
                                    [&line] { return describe_command(line.describe); });
   add_input(describe, line.describe.input);
-  describe->get_option("SCENARIO")->required(false);
+  CLI::Option* scenario = describe->get_option("SCENARIO")->required(false);
+  describe->get_option("--set")->needs(scenario);
+  describe->callback([&line, scenario] { line.describe.all_keys = scenario->count() == 0; });
   describe->footer("Without a scenario: every key with its default, range, unit and meaning.");
 
   CLI::App* link = add_command(line, "link", "A scenario file as a link, or a link as scenario text",
@@ -103,10 +105,6 @@ std::string nearest(const std::string& word, const std::vector<std::string>& can
   return found;
 }
 
-std::string with_hint(std::string message, const std::string& hint) {
-  return hint.empty() ? message : message + "; did you mean " + hint + '?';
-}
-
 /// Words behind the command that nothing takes: misspelt options, and too many scenarios.
 std::string complaint_about(const std::string& word, const CLI::App& command) {
   const bool option = word.size() > 1 && word[0] == '-';
@@ -116,7 +114,10 @@ std::string complaint_about(const std::string& word, const CLI::App& command) {
     for (const std::string& name : known->get_lnames()) names.push_back("--" + name);
   }
   const std::string bare = word.substr(0, word.find('='));
-  return with_hint("unknown option " + clipped(bare) + " of " + command.get_name(), nearest(bare, names));
+  const std::string hint = nearest(bare, names);
+  return "unknown option " + clipped(bare) + " of " + command.get_name() +
+         (hint.empty() ? "; see linewright " + command.get_name() + " --help"
+                       : "; did you mean " + hint + '?');
 }
 
 int refuse(const std::string& message) {
@@ -125,12 +126,17 @@ int refuse(const std::string& message) {
 }
 
 int refuse_word(const Line& line, const std::string& word) {
-  std::vector<std::string> names{"--help", "--version"};
-  for (const Bound& command : line.commands) names.push_back(command.app->get_name());
-  const char* kind = word[0] == '-' ? "unknown option " : "unknown command ";
-  std::string hint = nearest(word, names);
-  if (hint.empty()) hint = "one of drive, check, describe, link";
-  return refuse(with_hint(kind + clipped(word), hint));
+  std::vector<std::string> names;
+  std::string list;
+  for (const Bound& command : line.commands) {
+    names.push_back(command.app->get_name());
+    list += (list.empty() ? "" : ", ") + names.back();
+  }
+  names.insert(names.end(), {"--help", "--version"});
+  const std::string hint = nearest(word, names);
+  return refuse((word.substr(0, 1) == "-" ? "unknown option " : "unknown command ") +
+                (word.empty() ? "\"\"" : clipped(word)) +
+                (hint.empty() ? "; the commands are " + list : "; did you mean " + hint + '?'));
 }
 
 bool is_word(const Line& line, const std::string& word) {
@@ -163,7 +169,7 @@ int run(int argc, const char* const* argv) {
   line.app.set_version_flag("--version", build_info, "How this program was built");
   add_commands(line);
   const std::string first = argc > 1 ? argv[1] : "--help";
-  if (!is_word(line, first)) return refuse_word(line, first.empty() ? "\"\"" : first);
+  if (!is_word(line, first)) return refuse_word(line, first);
   if (argc < 2) {
     complain("a command is wanted\n\n" + line.app.help());
     return wrong_input;
