@@ -32,12 +32,16 @@ float Flow::height() const { return bench.unit * (bench.desk.layout.touch ? 42.0
 
 ImVec2 Flow::place(float width) {
   if (x > left && x + width > right) {
-    x = left;
-    y += height() + 6 * bench.unit;
+    next_line();
   }
   const ImVec2 at{x, y};
   x += width + 6 * bench.unit;
   return at;
+}
+
+void Flow::next_line() {
+  x = left;
+  y += height() + 6 * bench.unit;
 }
 
 void Flow::space() {

@@ -21,6 +21,7 @@ struct Flow {
   float lower() const { return y + height(); }
   ImVec2 place(float width);  // takes the room for a control
   void space();               // a wider gap between groups
+  void next_line();
 };
 
 float text_width(const Bench& bench, const char* text);

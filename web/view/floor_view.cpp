@@ -109,8 +109,8 @@ void draw_course(Bench& bench) {
     begin_layer(floor.tape_layer, bench);
     const LineShape shape = shape_of(bench.line(), 2e-4 / floor.view.scale);
     add_tape(floor.tape_layer.mesh, shape, floor.view, width, bench.theme);
-    add_arrows(floor.tape_layer.mesh, bench.line(), floor.view, width, panel::faded(bench.theme.bare, 0.75f),
-               120.0f * bench.unit);
+    add_arrows(floor.tape_layer.mesh, bench.line(), floor.view, width, panel::faded(bench.theme.faint, 0.8f),
+               110.0f * bench.unit);
   }
   put(floor.tape_layer.mesh, bench.draw);
   draw_start(bench.draw, bench.line(), floor.view, width, bench.theme, bench.unit);
@@ -123,8 +123,9 @@ void draw_paths(Bench& bench) {
     Mesh& mesh = floor.path_layer.mesh;
     if (bench.desk.kept && bench.desk.show_kept)
       add_ghost(mesh, floor.kept_path, floor.view, panel::faded(bench.theme.kept, 0.85f), 1.1f * bench.unit);
-    add_path(mesh, floor.path, floor.view, bench.desk.good.scenario.drive.lost_mm, bench.desk.dark,
-             1.6f * bench.unit);
+    const auto tape = static_cast<float>(0.5 * bench.desk.good.scenario.course.line_mm * floor.view.scale);
+    const float half = std::clamp(0.4f * tape, 1.1f, 1.7f) * bench.unit;
+    add_path(mesh, floor.path, floor.view, bench.desk.good.scenario, bench.desk.dark, half);
   }
   put(floor.path_layer.mesh, bench.draw);
 }
@@ -169,6 +170,14 @@ double draw_floor(Bench& bench) {
   return grid;
 }
 
+/// What was begun is as if it had not been.
+void drop(FloorView& floor, panel::Desk& desk) {
+  const Grip grip = floor.held.grip;
+  if (grip != Grip::nothing && grip != Grip::floor && grip != Grip::time) panel::cancel_edit(desk);
+  floor.held = {};
+  floor.refusal.clear();
+}
+
 void draw_refusal(const Bench& bench) {
   if (bench.idle() || !bench.pointer.held) return;
   std::string text = bench.floor.refusal;
@@ -182,7 +191,7 @@ void draw_refusal(const Bench& bench) {
 
 void fit_floor(FloorView& floor, const panel::Desk& desk) {
   const Frame whole = floor.view.frame;
-  const float unit = desk.scale, top = 52 * unit, bottom = 34 * unit;
+  const float unit = desk.scale, top = floor.band, bottom = 30 * unit;
   Frame free = whole;
   free.y += top;
   free.height = std::max(40.0f, whole.height - top - bottom);
@@ -191,6 +200,15 @@ void fit_floor(FloorView& floor, const panel::Desk& desk) {
   if (!box.empty())
     box.add(box.low_x - half, box.low_y - half), box.add(box.high_x + half, box.high_y + half);
   View view = fitted(free, box, 26 * unit);
+  // Beside the close-up, unless that would make the course much smaller than below it.
+  const float beside = floor.close_up ? close_up_side(whole, unit) : 0.0f;
+  if (beside > 0.0f) {
+    Frame left = free;
+    left.width -= beside;
+    const View smaller = fitted(left, box, 26 * unit);
+    if (smaller.scale > 0.75 * view.scale) view = smaller, free = left;
+  }
+  view.centre_x += (whole.x + 0.5 * whole.width - free.x - 0.5 * free.width) / view.scale;
   view.centre_y -= (whole.y + 0.5 * whole.height - free.y - 0.5 * free.height) / view.scale;
   floor.view = in_frame(view, whole);
   floor.moved_by_hand = false;
@@ -199,12 +217,7 @@ void fit_floor(FloorView& floor, const panel::Desk& desk) {
 
 void pinch_floor(FloorView& floor, panel::Desk& desk, const app::Pinch& pinch) {
   if (!floor.view.frame.holds({pinch.x, pinch.y})) return;
-  if (pinch.phase == app::Pinch::began) {
-    const Grip grip = floor.held.grip;
-    if (grip != Grip::nothing && grip != Grip::floor && grip != Grip::time) panel::cancel_edit(desk);
-    floor.held = {};
-    floor.refusal.clear();
-  }
+  if (pinch.phase == app::Pinch::began) drop(floor, desk);
   if (pinch.phase != app::Pinch::moved) return;
   floor.view = zoomed(panned(floor.view, pinch.moved_x, pinch.moved_y), {pinch.x, pinch.y}, pinch.scale);
   floor.moved_by_hand = true;
@@ -220,8 +233,6 @@ void show_floor(FloorView& floor, panel::Desk& desk) {
   const Frame frame{box.x + strip, box.y, box.width - strip, box.height};
   const bool resized = frame.width != floor.view.frame.width || frame.height != floor.view.frame.height;
   floor.view = in_frame(floor.view, frame);
-  if (resized && !floor.moved_by_hand) fit_floor(floor, desk);
-  follow_drives(floor, desk);
 
   // Controls come first, so that what is pressed on them is not pressed on the floor as well; yet they are
   // drawn above it.
@@ -231,8 +242,14 @@ void show_floor(FloorView& floor, panel::Desk& desk) {
   draw.ChannelsSetCurrent(1);
   show_strip(bench, box);
   const float options = show_options(bench);
-  ImGui::SetCursorScreenPos({frame.x, frame.y});
-  ImGui::InvisibleButton("surface", {frame.width, frame.height});
+  const bool banded = options > frame.y && desk.tool != panel::Tool::look;
+  const float band = banded ? options + 8 * bench.unit : frame.y;
+  const bool covered = floor.band != band - frame.y;
+  floor.band = band - frame.y;
+  if ((resized || covered) && !floor.moved_by_hand) fit_floor(floor, desk);
+  follow_drives(floor, desk);
+  ImGui::SetCursorScreenPos({frame.x, band});
+  ImGui::InvisibleButton("surface", {frame.width, std::max(frame.y + frame.height - band, 1.0f)});
   bench.pointer = pointer_of(floor, desk);
   draw.ChannelsSetCurrent(0);
   ImGui::PushClipRect({frame.x, frame.y}, {frame.x + frame.width, frame.y + frame.height}, true);
@@ -241,8 +258,11 @@ void show_floor(FloorView& floor, panel::Desk& desk) {
   work(bench);
   const bool close_up = floor.close_up && desk.tool == panel::Tool::look && panel::has_drive(desk);
   if (close_up) draw_close_up(bench, options + 8 * bench.unit);
+  draw.AddRectFilled({frame.x, frame.y}, {frame.x + frame.width, band},
+                     panel::faded(bench.theme.surface, 0.92f));
   draw_footer(bench, grid, hint_of(bench));
   draw_refusal(bench);
+  if (!bench.idle() && ImGui::IsKeyPressed(ImGuiKey_Escape, false)) drop(bench.floor, desk);
   if (bench.pointer.released || (!bench.idle() && !bench.pointer.held)) let_go(bench);
   ImGui::PopClipRect();
   draw.ChannelsMerge();

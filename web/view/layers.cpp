@@ -32,12 +32,13 @@ ImVec2 across(const View& view, const CoursePoint& p, double along_mm, double le
 }
 
 /// Words by a mark, on a plate so that they can be read over anything.
-void label(ImDrawList& draw, Pixel at, const char* text, ImU32 colour, const panel::Theme& theme,
-           float unit) {
+void label(ImDrawList& draw, const Frame& frame, Pixel at, const char* text, ImU32 colour,
+           const panel::Theme& theme, float unit) {
   ImFont* font = page::typeface().small;
   const float size = font->FontSize * ImGui::GetIO().FontGlobalScale * unit;
   const ImVec2 extent = font->CalcTextSizeA(size, 1e9f, 0.0f, text);
-  const ImVec2 corner{at.x + 12 * unit, at.y - 0.5f * extent.y};
+  ImVec2 corner{at.x + 12 * unit, at.y - 0.5f * extent.y};
+  if (corner.x + extent.x + 6 * unit > frame.x + frame.width) corner.x = at.x - 12 * unit - extent.x;
   draw.AddRectFilled({corner.x - 4 * unit, corner.y - 2 * unit},
                      {corner.x + extent.x + 4 * unit, corner.y + extent.y + 2 * unit},
                      panel::faded(theme.surface, 0.88f), 3 * unit);
@@ -70,13 +71,12 @@ void add_tape(Mesh& mesh, const LineShape& shape, const View& view, double width
 
 void add_arrows(Mesh& mesh, const Centreline& line, const View& view, double width_mm, ImU32 colour,
                 float apart_px) {
-  const double width_px = width_mm * view.scale;
-  const double size = std::clamp(0.28 * width_px, 2.6, 9.0) / view.scale;  // mm
+  const double size = 4.0 / view.scale, aside = 0.5 * width_mm + 11.0 / view.scale;  // mm
   const double count = std::floor(1e3 * line.length * view.scale / apart_px);
   for (double i = 0; i < count; ++i) {
     const CoursePoint p = point_at(line, line.length * (i + 0.5) / count);
-    const ImVec2 tip = across(view, p, size, 0), left = across(view, p, -0.6 * size, size),
-                 right = across(view, p, -0.6 * size, -size);
+    const ImVec2 tip = across(view, p, size, aside), left = across(view, p, -0.5 * size, aside + size),
+                 right = across(view, p, -0.5 * size, aside - size);
     const std::vector<Pixel> arrow{pixel(left), pixel(tip), pixel(right)};
     const auto direction = [](Pixel a, Pixel b) {
       const float d = std::max(distance(a, b), 1e-3f);
@@ -85,8 +85,8 @@ void add_arrows(Mesh& mesh, const Centreline& line, const View& view, double wid
     for (int k = 0; k < 2; ++k) {
       const auto [x, y] =
           direction(arrow[static_cast<std::size_t>(k)], arrow[static_cast<std::size_t>(k) + 1]);
-      const RibbonPoint ends[] = {{arrow[static_cast<std::size_t>(k)], x, y, 0.9f, colour},
-                                  {arrow[static_cast<std::size_t>(k) + 1], x, y, 0.9f, colour}};
+      const RibbonPoint ends[] = {{arrow[static_cast<std::size_t>(k)], x, y, 0.8f, colour},
+                                  {arrow[static_cast<std::size_t>(k) + 1], x, y, 0.8f, colour}};
       add_ribbon(mesh, ends);
     }
   }
@@ -111,16 +111,19 @@ void draw_start(ImDrawList& draw, const Centreline& line, const View& view, doub
                        theme.text);
 }
 
-void add_path(Mesh& mesh, const Path& path, const View& view, double far_mm, bool dark, float half) {
+void add_path(Mesh& mesh, const Path& path, const View& view, const Scenario& scenario, bool dark,
+              float half) {
+  const double far_mm = scenario.drive.lost_mm;
   const std::vector<std::size_t> rows = thinned(path, view, 2.0f);
   std::vector<Pixel> points;
   std::vector<ImU32> colours;
   points.reserve(rows.size()), colours.reserve(rows.size());
   for (const std::size_t row : rows) {
     points.push_back(to_screen(view, path.x[row], path.y[row]));
-    colours.push_back(panel::deviation_colour(dark, path.deviation[row] / far_mm));
+    colours.push_back(panel::deviation_colour(dark, share_of_scale(path.deviation[row], far_mm)));
   }
-  add_trail(mesh, points, std::vector<ImU32>{panel::theme(dark).bare}, half + 1.25f);
+  const auto tape = static_cast<float>(0.5 * scenario.course.line_mm * view.scale);
+  if (tape > half + 2.5f) add_trail(mesh, points, std::vector<ImU32>{panel::theme(dark).bare}, half + 1.25f);
   add_trail(mesh, points, colours, half);
 }
 
@@ -143,7 +146,7 @@ void draw_marks(ImDrawList& draw, const panel::GoodDrive& good, const Path& path
   if (!failed || distance(far, end) > 60 * unit) {
     std::snprintf(text, sizeof text, "%.1f mm off", static_cast<double>(*worst));
     draw.AddCircle(vec(far), 6 * unit, theme.text, 0, 1.5f * unit);
-    label(draw, far, text, theme.text, theme, unit);
+    label(draw, view.frame, far, text, theme.text, theme, unit);
   }
   if (!failed) return;
   const float r = 9 * unit;
@@ -159,7 +162,7 @@ void draw_marks(ImDrawList& draw, const panel::GoodDrive& good, const Path& path
     draw.AddLine(vec(end), {end.x + 0.6f * r, end.y}, theme.bad, 2 * unit);
   }
   std::snprintf(text, sizeof text, lost ? "line lost, %.2f m" : "out of time, %.2f m", good.summary.progress);
-  label(draw, {end.x + 4 * unit, end.y}, text, theme.bad, theme, unit);
+  label(draw, view.frame, {end.x + 4 * unit, end.y}, text, theme.bad, theme, unit);
 }
 
 }  // namespace lw::view

@@ -21,26 +21,40 @@ void write(const Bench& bench, ImFont* font, ImVec2 at, ImU32 colour, std::strin
   bench.draw.AddText(font, text_size(font, bench.unit), at, colour, text.data(), text.data() + text.size());
 }
 
-/// The ramp of colours with its two ends named; `right` is its right edge. Returns its left edge.
+/// "0 === 15 === 60 mm off the line": the ramp of colours in two halves; `right` is its right edge. Returns
+/// its left edge.
 float draw_legend(const Bench& bench, float right, float middle) {
   ImFont* font = page::typeface().small;
-  const float unit = bench.unit, width = 110 * unit, height = 8 * unit;
-  char far[32];
-  std::snprintf(far, sizeof far, "%.4g mm", bench.desk.good.scenario.drive.lost_mm);
-  const ImVec2 far_size = measured(font, unit, far), off_size = measured(font, unit, "off the line 0");
-  const float y = middle - 0.5f * far_size.y;
-  float x = right - far_size.x;
-  write(bench, font, {x, y}, bench.theme.text, far);
-  x -= 8 * unit + width;
-  constexpr int parts = 24;
-  for (int i = 0; i < parts; ++i) {
-    const float step = width / parts, from = x + step * static_cast<float>(i);
-    bench.draw.AddRectFilled({from, middle - 0.5f * height}, {from + step + 0.5f, middle + 0.5f * height},
-                             panel::deviation_colour(bench.desk.dark, (i + 0.5) / parts));
-  }
-  x -= 8 * unit + off_size.x;
-  write(bench, font, {x, y}, bench.theme.text, "off the line 0");
-  return x;
+  const float unit = bench.unit, half = 56 * unit, height = 8 * unit, gap = 7 * unit;
+  const double far = bench.desk.good.scenario.drive.lost_mm;
+  float x = right;
+  const auto word = [&](const char* format, double value) {
+    char text[48];
+    std::snprintf(text, sizeof text, format, value);
+    const ImVec2 size = measured(font, unit, text);
+    x -= size.x;
+    write(bench, font, {x, middle - 0.5f * size.y}, bench.theme.text, text);
+    x -= gap;
+  };
+  const auto ramp = [&](double from, double to) {
+    constexpr int parts = 14;
+    const float step = half / parts;
+    x -= half;
+    for (int i = 0; i < parts; ++i) {
+      const float left = x + step * static_cast<float>(i);
+      bench.draw.AddRectFilled(
+          {left, middle - 0.5f * height}, {left + step + 0.5f, middle + 0.5f * height},
+          panel::deviation_colour(bench.desk.dark, from + (to - from) * (i + 0.5) / parts));
+    }
+    x -= gap;
+  };
+  const double middle_mm = 0.25 * far;
+  word("%.4g mm off the line", far);
+  ramp(share_of_scale(middle_mm, far), 1.0);
+  word("%.3g", middle_mm);
+  ramp(0.0, share_of_scale(middle_mm, far));
+  word("%.0f", 0.0);
+  return x + gap;
 }
 
 /// A bar as long as one square of the grid. Returns its left edge.
@@ -99,10 +113,15 @@ void draw_footer(const Bench& bench, double grid_mm, std::string_view hint) {
   bench.draw.PopClipRect();
 }
 
+float close_up_side(const Frame& frame, float unit) {
+  const float side = std::clamp(0.42f * std::min(frame.width, frame.height), 150 * unit, 260 * unit);
+  return frame.height < 1.6f * side || frame.width < 2.5f * side ? 0.0f : side;
+}
+
 void draw_close_up(const Bench& bench, float top) {
   const Frame& f = bench.floor.view.frame;
-  const float side = std::clamp(0.42f * std::min(f.width, f.height), 150 * bench.unit, 260 * bench.unit);
-  if (f.height < 1.6f * side || f.width < 2.5f * side) return;
+  const float side = close_up_side(f, bench.unit);
+  if (side == 0.0f) return;
   const Frame frame{f.x + f.width - side - 10 * bench.unit, top, side, side};
   const panel::GoodDrive& good = bench.desk.good;
   const TraceRow row = panel::between_rows(good.trace, bench.desk.playback.cursor);
@@ -120,7 +139,7 @@ void draw_close_up(const Bench& bench, float top) {
   const double width = good.scenario.course.line_mm;
   add_tape(mesh, bench.floor.near_shape, view, width, bench.theme);
   if (!bench.floor.path.x.empty())
-    add_path(mesh, bench.floor.path, view, good.scenario.drive.lost_mm, bench.desk.dark, 2.0f * bench.unit);
+    add_path(mesh, bench.floor.path, view, good.scenario, bench.desk.dark, 2.0f * bench.unit);
   put(mesh, bench.draw);
   const std::size_t at = panel::row_at(good.trace, bench.desk.playback.cursor);
   const auto sensors = static_cast<std::size_t>(good.trace.sensors);

@@ -14,7 +14,9 @@ void draw_bubble(const Bench& bench, Pixel at, std::string_view text, ImU32 colo
 void draw_footer(const Bench& bench, double grid_mm, std::string_view hint);
 float footer_height(const Bench& bench);
 
-/// The vehicle with the floor around it, large, in the upper right corner.
+/// The vehicle with the floor around it, large, in the upper right corner of the frame, below `top`.
 void draw_close_up(const Bench& bench, float top);
+/// The length of its sides, px; 0 where the frame is too small for one.
+float close_up_side(const Frame& frame, float unit);
 
 }  // namespace lw::view

@@ -64,10 +64,9 @@ NearRow nearest_row(const Path& path, const View& view, Pixel p, std::size_t fav
   return chosen;
 }
 
-Box box_of(const Path& path) {
-  Box box;
-  for (std::size_t i = 0; i < path.x.size(); ++i) box.add(path.x[i], path.y[i]);
-  return box;
+double share_of_scale(double deviation_mm, double far_mm) {
+  if (!(far_mm > 0.0)) return 0.0;
+  return std::sqrt(std::clamp(deviation_mm / far_mm, 0.0, 1.0));
 }
 
 }  // namespace lw::view

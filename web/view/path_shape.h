@@ -34,6 +34,8 @@ struct NearRow {
 };
 NearRow nearest_row(const Path& path, const View& view, Pixel p, std::size_t favoured, float slack_px);
 
-Box box_of(const Path& path);
+/// Place on the scale of colours, 0 to 1: the square root of deviation over `far_mm`, because the first
+/// millimetres off the line say more about a drive than the last before it is lost.
+double share_of_scale(double deviation_mm, double far_mm);
 
 }  // namespace lw::view

@@ -8,6 +8,7 @@
 #include "web/view/course_pieces.h"
 #include "web/view/course_points.h"
 #include "web/view/course_whole.h"
+#include "web/view/overlays.h"
 
 namespace lw::view {
 namespace {
@@ -140,6 +141,17 @@ void offer_new_pieces(Flow& flow) {
   }
 }
 
+/// What the next piece gets.
+void offer_measures(Flow& flow) {
+  FloorView& next = flow.bench.floor;
+  if (const auto length = number_entry(flow, {"Length", "mm", 50, 1, 1e6}, next.length_mm))
+    next.length_mm = *length;
+  if (const auto radius = number_entry(flow, {"Radius", "mm", 10, 1, 1e6}, next.radius_mm))
+    next.radius_mm = *radius;
+  if (const auto turn = number_entry(flow, {"Turn", "\u00b0", 15, 1, 179}, next.turn_deg))
+    next.turn_deg = *turn;
+}
+
 void offer_piece(Flow& flow) {
   Bench& bench = flow.bench;
   FloorView& next = bench.floor;
@@ -172,14 +184,13 @@ void offer_piece(Flow& flow) {
   }
   if (now) edit_at_once(bench, with_piece_changed(bench.desk.scenario, index, *now));
   const std::size_t count = bench.course().pieces.size();
-  if (word_button(flow, "Earlier", index > 0) &&
+  if (word_button(flow, "\u2190", index > 0) &&
       edit_at_once(bench, with_piece_moved(bench.desk.scenario, index, index - 1)))
     --chosen;
-  if (word_button(flow, "Later", index + 1 < count) &&
+  if (word_button(flow, "\u2192", index + 1 < count) &&
       edit_at_once(bench, with_piece_moved(bench.desk.scenario, index, index + 1)))
     ++chosen;
-  if (word_button(flow, "Delete piece") &&
-      edit_at_once(bench, with_piece_removed(bench.desk.scenario, index)))
+  if (word_button(flow, "Delete") && edit_at_once(bench, with_piece_removed(bench.desk.scenario, index)))
     chosen = -1;
 }
 
@@ -198,12 +209,12 @@ void offer_shape(Flow& flow) {
   flow.space();
   offer_closing(flow);
   offer_width(flow);
+  flow.next_line();
+  if (bench.desk.selection.piece >= 0) return offer_piece(flow);
+  offer_measures(flow);
   flow.space();
-  if (bench.desk.selection.piece >= 0) {
-    offer_piece(flow);
-  } else if (word_button(flow, "Turn into points", bench.in_step())) {
+  if (word_button(flow, "Turn into points", bench.in_step()))
     edit_at_once(bench, with_points_from_pieces(bench.desk.scenario, bench.line()));
-  }
 }
 
 void offer_gaps(Flow& flow) {
@@ -264,7 +275,7 @@ float show_options(Bench& bench) {
   Flow flow(bench, f.x + pad, f.x + f.width - pad, f.y + pad);
   switch (bench.desk.tool) {
     case Tool::look: {
-      if (!panel::has_drive(bench.desk)) return f.y;
+      if (!panel::has_drive(bench.desk) || close_up_side(f, bench.unit) == 0.0f) return f.y;
       const float width = text_width(bench, "Hide close-up") + 22 * bench.unit;
       flow.x = flow.left = std::max(flow.left, flow.right - width);
       if (word_button(flow, bench.floor.close_up ? "Hide close-up" : "Close-up"))
@@ -290,22 +301,22 @@ float show_options(Bench& bench) {
 }
 
 std::string_view hint_of(const Bench& bench) {
-  const bool pieces = !bench.course().pieces.empty();
+  const Course& course = bench.course();
   switch (bench.desk.tool) {
     case Tool::look:
-      return "Drag the floor to move it, drag along the path to move in time. Twice: fit";
+      return "Drag the floor to move it, the path to move in time";
     case Tool::draw:
-      return bench.course().closed || pieces
-                 ? "Draw the whole course in one stroke; back to its beginning closes it"
-                 : "Draw a new course, or carry on from the end of this one";
+      if (course.closed || !course.pieces.empty())
+        return "One stroke draws the course; back at its start it closes";
+      return "One stroke draws the course, or carries on from its end";
     case Tool::points:
-      if (pieces) return "Press a piece to choose it, drag its spots to change it";
-      return "Drag a point. Press the line for a new one, a point twice for a corner";
+      if (!course.pieces.empty()) return "Press a piece to choose it, then drag its spots";
+      return "Drag points; press the line for a new one, twice: corner";
     case Tool::gaps:
-      return "Drag along the line to make a gap, drag its ends to change it. Twice: remove";
+      return "Drag along the line to leave a gap; press twice: removed";
     case Tool::start:
-      return bench.course().closed ? "Drag along the line: the drive starts there"
-                                   : "Drag along the line: what lies before the start is cut off";
+      if (course.closed) return "Drag along the line: the drive starts there";
+      return "Drag along the line: what lies before is cut off";
   }
   return {};
 }
