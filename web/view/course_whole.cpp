@@ -13,8 +13,8 @@ namespace lw::view {
 namespace {
 
 constexpr double shortest_rest_mm = 10.0;
-constexpr double bend_step_deg = 30.0;      // between two drawn points of a bend
-constexpr double straight_step_mm = 200.0;  // and of a straight, at most
+constexpr double bend_step_deg = 15.0;  // between two drawn points of a bend
+constexpr double joint_step_mm = 60.0;  // from the end of a straight to the next point of it
 
 Point tidy_point(const CoursePoint& p) { return {tidy(1e3 * p.x, 0.1), tidy(1e3 * p.y, 0.1)}; }
 
@@ -150,13 +150,27 @@ void reverse_points(Course& course) {
   std::sort(course.corners.begin(), course.corners.end());
 }
 
+/// Where on a straight points are drawn: dense at its ends, where the curve has to go over into a bend, and
+/// ever farther apart towards its middle.
+std::vector<double> places_on_straight(double length) {
+  std::vector<double> places{0.0};
+  for (double step = joint_step_mm; places.back() + 1.5 * step < 0.5 * length; step *= 2.0)
+    places.push_back(places.back() + step);
+  for (std::size_t i = places.size() - 1; i > 0; --i) places.push_back(length - places[i]);
+  return places;
+}
+
 /// Drawn points along one piece, its beginning but not its end.
 void add_points_of(const Piece& piece, double s_mm, const Centreline& line, std::vector<Point>& points) {
   const double length = length_of_piece(piece);
-  const double parts = piece.straight_mm ? std::ceil(length / straight_step_mm)
-                                         : std::ceil(std::fabs(*piece.turn_deg) / bend_step_deg);
-  for (double i = 0; i < parts; ++i)
-    points.push_back(tidy_point(point_at(line, 1e-3 * (s_mm + length * i / parts))));
+  std::vector<double> places;
+  if (piece.straight_mm) {
+    places = places_on_straight(length);
+  } else {
+    const double parts = std::ceil(std::fabs(*piece.turn_deg) / bend_step_deg);
+    for (double i = 0; i < parts; ++i) places.push_back(length * i / parts);
+  }
+  for (const double place : places) points.push_back(tidy_point(point_at(line, 1e-3 * (s_mm + place))));
 }
 
 }  // namespace

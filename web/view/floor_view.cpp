@@ -196,7 +196,9 @@ void fit_floor(FloorView& floor, const panel::Desk& desk) {
   free.y += top;
   free.height = std::max(40.0f, whole.height - top - bottom);
   Box box = floor.line_box;
-  const double half = panel::has_drive(desk) ? 0.5 * desk.good.scenario.course.line_mm : 0.0;
+  // Room for the vehicle too, wherever along the line it is.
+  const Scenario& driven = desk.good.scenario;
+  const double half = std::max(0.5 * driven.course.line_mm, 0.7 * driven.vehicle.track_width_mm);
   if (!box.empty())
     box.add(box.low_x - half, box.low_y - half), box.add(box.high_x + half, box.high_y + half);
   View view = fitted(free, box, 26 * unit);
