@@ -45,6 +45,15 @@ const auto exact_cosine = [](long double x) { return std::cos(x); };
 }  // namespace
 
 // The platform's long double functions serve as the reference: at least 11 bits more than is asked of ours.
+// Not so under Emscripten, whose C library answers expl and logl of its 128-bit long double with exp and log
+// of double; there the reference itself may be off by a unit in the last place. Native runs hold ours to the
+// stated bound, and the pinned bits are the same on both.
+#ifdef __EMSCRIPTEN__
+constexpr double reference_ulp = 1.0;
+#else
+constexpr double reference_ulp = 0.0;
+#endif
+
 TEST_CASE("sine and cosine keep their stated error") {
   CHECK(worst_ulp(sine, exact_sine, -pi / 4, pi / 4) < 1.3);
   CHECK(worst_ulp(cosine, exact_cosine, -pi / 4, pi / 4) < 1.3);
@@ -57,10 +66,10 @@ TEST_CASE("sine and cosine keep their stated error") {
 TEST_CASE("exponential and logarithm keep their stated error") {
   const auto exact_exponential = [](long double x) { return std::exp(x); };
   const auto exact_logarithm = [](long double x) { return std::log(x); };
-  CHECK(worst_ulp(our_exponential, exact_exponential, -1.0, 1.0) < 1.0);
-  CHECK(worst_ulp(our_exponential, exact_exponential, -700.0, 700.0) < 1.0);
-  CHECK(worst_ulp(our_logarithm, exact_logarithm, 1e-12, 3.0) < 2.0);
-  CHECK(worst_ulp(our_logarithm, exact_logarithm, 1e-300, 1e300) < 2.0);
+  CHECK(worst_ulp(our_exponential, exact_exponential, -1.0, 1.0) < 1.0 + reference_ulp);
+  CHECK(worst_ulp(our_exponential, exact_exponential, -700.0, 700.0) < 1.0 + reference_ulp);
+  CHECK(worst_ulp(our_logarithm, exact_logarithm, 1e-12, 3.0) < 2.0 + reference_ulp);
+  CHECK(worst_ulp(our_logarithm, exact_logarithm, 1e-300, 1e300) < 2.0 + reference_ulp);
 }
 
 TEST_CASE("arctangent and arccosine keep their stated error") {
