@@ -27,6 +27,7 @@ struct App {
   std::vector<panel::LibraryEntry> library;
   double last_frame = 0.0;  // host::seconds()
   bool touched = false;     // a finger was seen
+  bool was_playing = false;
   bool unsaved = false;
   panel::Box pinched;  // where the two fingers came down
 };
@@ -85,9 +86,10 @@ void draw_joints(const panel::Desk& desk) {
 void pass_time(App& app) {
   panel::Desk& desk = app.desk;
   desk.now = host::seconds();
-  // After a rest the first frame of playback would otherwise jump.
-  const double elapsed = std::clamp(desk.now - app.last_frame, 0.0, 0.1);
+  // Before the first frame of playback the page was at rest, for however long.
+  const double elapsed = app.was_playing ? std::clamp(desk.now - app.last_frame, 0.0, 1.0) : 0.0;
   app.last_frame = desk.now;
+  app.was_playing = desk.playback.playing;
   desk.animate = false;
   panel::play_on(desk, elapsed);
 }
@@ -130,6 +132,7 @@ bool frame() {
   const ImGuiIO& io = ImGui::GetIO();
   app.touched = app.touched || io.MouseSource == ImGuiMouseSource_TouchScreen;
   pass_time(app);
+  desk.scale = std::min(app.state.wanted_scale, panel::largest_scale(io.DisplaySize.x, io.DisplaySize.y));
   desk.layout =
       panel::arrange(io.DisplaySize.x, io.DisplaySize.y, desk.scale, app.touched, app.state.charts.open);
   panel::dress(desk.dark, desk.scale, desk.layout.touch);

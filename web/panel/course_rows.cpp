@@ -80,7 +80,8 @@ void piece_row(Rows& rows, std::size_t i) {
   const bool straight = desk.scenario.course.pieces[i].straight_mm.has_value();
   if (straight) {
     piece_entry(ui, i, "straight_mm", left, y, (room - gap) / 2);
-    put_text(ui, Type::small, {left + room / 2 + ui.px(10), y + ui.px(8)}, ui.colours().faint, "straight");
+    const float text_y = y + (ui.row_height() - line_height(ui, Type::small)) / 2;
+    put_text(ui, Type::small, {left + room / 2 + ui.px(10), text_y}, ui.colours().faint, "straight");
   } else {
     piece_entry(ui, i, "radius_mm", left, y, (room - gap) / 2);
     piece_entry(ui, i, "turn_deg", left + (room + gap) / 2, y, (room - gap) / 2);
@@ -142,7 +143,7 @@ void piece_rows(Rows& rows, const FieldInfo& info) {
     new_line(rows);
     return;
   }
-  title(ui, "Pieces, in order");
+  title(ui, "Pieces: length, or radius and turn");
   rows.top = rows.bottom = ImGui::GetCursorScreenPos().y;
   for (std::size_t i = 0; i < course.pieces.size(); ++i) {
     if (ImGui::IsRectVisible({rows.left, rows.top}, {rows.left + 1, rows.top + ui.row_height()})) {

@@ -114,8 +114,8 @@ std::optional<Scenario> kept_in_browser() {
 
 void keep_look(const Desk& desk, PanelState& state) {
   // "1 dark scale strips open", one word each; a later version that needs more begins with another number.
-  const std::string text = std::string("1 ") + (desk.dark ? "1 " : "0 ") + number_text(desk.scale) + " " +
-                           std::to_string(state.charts.shown) + (state.charts.open ? " 1" : " 0");
+  const std::string text = std::string("1 ") + (desk.dark ? "1 " : "0 ") + number_text(state.wanted_scale) +
+                           " " + std::to_string(state.charts.shown) + (state.charts.open ? " 1" : " 0");
   if (text == state.look_kept) return;
   state.look_kept = text;
   host::store(look_key, text);
@@ -130,7 +130,7 @@ void restore_look(Desk& desk, PanelState& state) {
       version != 1)
     return;
   desk.dark = dark != 0;
-  if (scale >= least_scale && scale <= most_scale) desk.scale = scale;
+  if (scale >= least_scale && scale <= most_scale) state.wanted_scale = scale;
   state.charts.shown = shown;
   state.charts.open = open != 0;
 }

@@ -40,6 +40,11 @@ Layout portrait(Layout layout, float width, float height, float scale, bool char
 
 }  // namespace
 
+float largest_scale(float width, float height) {
+  const float across = height > width ? width / 800.0f : width / 1060.0f;
+  return std::clamp(std::min(across, height / 660.0f), least_scale, most_scale);
+}
+
 Layout arrange(float width, float height, float scale, bool touch, bool charts_open) {
   Layout layout;
   layout.upright = height > width;

@@ -8,6 +8,7 @@
 #include "web/host.h"
 #include "web/panel/field_rows.h"
 #include "web/panel/hand_over.h"
+#include "web/panel/layout.h"
 #include "web/panel/play.h"
 #include "web/panel/quick.h"
 
@@ -17,10 +18,12 @@ namespace {
 constexpr float pad = 14.0f;
 constexpr float scales[] = {0.85f, 1.0f, 1.2f, 1.4f, 1.6f};
 
-void next_scale(Desk& desk) {
-  const auto* larger =
-      std::find_if(std::begin(scales), std::end(scales), [&](float s) { return s > desk.scale + 0.01f; });
-  desk.scale = larger == std::end(scales) ? scales[0] : *larger;
+void next_scale(Ui& ui) {
+  const ImVec2 window = ImGui::GetIO().DisplaySize;
+  const float most = largest_scale(window.x, window.y);
+  const auto* larger = std::find_if(std::begin(scales), std::end(scales),
+                                    [&](float s) { return s > ui.desk.scale + 0.01f && s <= most; });
+  ui.state.wanted_scale = larger == std::end(scales) ? scales[0] : *larger;
 }
 
 void actions(Ui& ui) {
@@ -42,7 +45,7 @@ void actions(Ui& ui) {
     desk.dark = !desk.dark;
   }
   ImGui::SameLine(0, gap);
-  if (button(ui, "Aa", Weight::plain, ui.row_height() + ui.px(8))) next_scale(desk);
+  if (button(ui, "Aa", Weight::plain, ui.row_height() + ui.px(8))) next_scale(ui);
   tip(ui, "Size of everything: " + fixed(desk.scale * 100.0, 0) + " %");
 }
 

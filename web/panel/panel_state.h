@@ -55,8 +55,9 @@ struct PanelState {
   ChartState charts;
   bool pushing = false;  // a finger scrolls the panel
   bool library_open = false;
-  std::string look_kept;   // what was stored last of the page's look
-  std::string link_entry;  // a link being typed or pasted
+  float wanted_scale = 1.0f;  // Desk::scale is this, or less where the window is too small for it
+  std::string look_kept;      // what was stored last of the page's look
+  std::string link_entry;     // a link being typed or pasted
 };
 
 }  // namespace lw::panel

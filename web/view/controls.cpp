@@ -48,15 +48,15 @@ void Flow::space() {
   if (x > left) x += 10 * bench.unit;
 }
 
-float text_width(const Bench& bench, const char* text) {
+float text_width(const Bench&, const char* text) {
   ImFont* font = page::typeface().small;
-  const float size = font->FontSize * ImGui::GetIO().FontGlobalScale * bench.unit;
+  const float size = font->FontSize * ImGui::GetIO().FontGlobalScale;
   return font->CalcTextSizeA(size, 1e9f, 0.0f, text).x;
 }
 
 void write_middle(const Bench& bench, ImVec2 low, ImVec2 high, ImU32 colour, const char* text) {
   ImFont* font = page::typeface().small;
-  const float size = font->FontSize * ImGui::GetIO().FontGlobalScale * bench.unit;
+  const float size = font->FontSize * ImGui::GetIO().FontGlobalScale;
   const ImVec2 extent = font->CalcTextSizeA(size, 1e9f, 0.0f, text);
   const ImVec2 at{std::round(0.5f * (low.x + high.x - extent.x)),
                   std::round(0.5f * (low.y + high.y - extent.y))};

@@ -35,7 +35,7 @@ ImVec2 across(const View& view, const CoursePoint& p, double along_mm, double le
 void label(ImDrawList& draw, const Frame& frame, Pixel at, const char* text, ImU32 colour,
            const panel::Theme& theme, float unit) {
   ImFont* font = page::typeface().small;
-  const float size = font->FontSize * ImGui::GetIO().FontGlobalScale * unit;
+  const float size = font->FontSize * ImGui::GetIO().FontGlobalScale;
   const ImVec2 extent = font->CalcTextSizeA(size, 1e9f, 0.0f, text);
   ImVec2 corner{at.x + 12 * unit, at.y - 0.5f * extent.y};
   if (corner.x + extent.x + 6 * unit > frame.x + frame.width) corner.x = at.x - 12 * unit - extent.x;

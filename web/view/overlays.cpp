@@ -11,14 +11,14 @@
 namespace lw::view {
 namespace {
 
-float text_size(ImFont* font, float unit) { return font->FontSize * ImGui::GetIO().FontGlobalScale * unit; }
+float text_size(ImFont* font) { return font->FontSize * ImGui::GetIO().FontGlobalScale; }
 
-ImVec2 measured(ImFont* font, float unit, std::string_view text) {
-  return font->CalcTextSizeA(text_size(font, unit), 1e9f, 0.0f, text.data(), text.data() + text.size());
+ImVec2 measured(ImFont* font, std::string_view text) {
+  return font->CalcTextSizeA(text_size(font), 1e9f, 0.0f, text.data(), text.data() + text.size());
 }
 
 void write(const Bench& bench, ImFont* font, ImVec2 at, ImU32 colour, std::string_view text) {
-  bench.draw.AddText(font, text_size(font, bench.unit), at, colour, text.data(), text.data() + text.size());
+  bench.draw.AddText(font, text_size(font), at, colour, text.data(), text.data() + text.size());
 }
 
 /// "0 === 15 === 60 mm off the line": the ramp of colours in two halves; `right` is its right edge. Returns
@@ -31,7 +31,7 @@ float draw_legend(const Bench& bench, float right, float middle) {
   const auto word = [&](const char* format, double value) {
     char text[48];
     std::snprintf(text, sizeof text, format, value);
-    const ImVec2 size = measured(font, unit, text);
+    const ImVec2 size = measured(font, text);
     x -= size.x;
     write(bench, font, {x, middle - 0.5f * size.y}, bench.theme.text, text);
     x -= gap;
@@ -63,7 +63,7 @@ float draw_scale(const Bench& bench, float right, float middle, double grid_mm) 
   const float unit = bench.unit;
   const auto width = static_cast<float>(grid_mm * bench.floor.view.scale);
   const std::string text = length_text(grid_mm);
-  const ImVec2 size = measured(font, unit, text);
+  const ImVec2 size = measured(font, text);
   const float x = right - size.x - 8 * unit - width;
   write(bench, font, {right - size.x, middle - 0.5f * size.y}, bench.theme.text, text);
   const ImU32 colour = bench.theme.text;
@@ -81,7 +81,7 @@ void draw_bubble(const Bench& bench, Pixel at, std::string_view text, ImU32 colo
   const Frame& frame = bench.floor.view.frame;
   const float wrap = std::min(340 * unit, frame.width - 40);
   const ImVec2 size =
-      font->CalcTextSizeA(text_size(font, unit), 1e9f, wrap, text.data(), text.data() + text.size());
+      font->CalcTextSizeA(text_size(font), 1e9f, wrap, text.data(), text.data() + text.size());
   // Above a finger that would hide it, beside a mouse pointer.
   const float lift = bench.pointer.reach > 15 ? 54 * unit : 16 * unit;
   const ImVec2 room{size.x + 2 * pad, size.y + 1.4f * pad};
@@ -91,7 +91,7 @@ void draw_bubble(const Bench& bench, Pixel at, std::string_view text, ImU32 colo
   x = std::clamp(x, frame.x + 4, std::max(frame.x + 4, frame.x + frame.width - room.x - 4));
   bench.draw.AddRectFilled({x, y}, {x + room.x, y + room.y}, bench.theme.surface, 4 * unit);
   bench.draw.AddRect({x, y}, {x + room.x, y + room.y}, bench.theme.rule, 4 * unit);
-  bench.draw.AddText(font, text_size(font, unit), {x + pad, y + 0.7f * pad}, colour, text.data(),
+  bench.draw.AddText(font, text_size(font), {x + pad, y + 0.7f * pad}, colour, text.data(),
                      text.data() + text.size(), wrap);
 }
 
@@ -107,7 +107,7 @@ void draw_footer(const Bench& bench, double grid_mm, std::string_view hint) {
   if (panel::has_drive(bench.desk)) left = draw_legend(bench, left, middle) - 2.2f * pad;
   left = draw_scale(bench, left, middle, grid_mm) - 2 * pad;
   ImFont* font = page::typeface().small;
-  const ImVec2 size = measured(font, bench.unit, hint);
+  const ImVec2 size = measured(font, hint);
   bench.draw.PushClipRect({f.x, top}, {left, f.y + f.height}, true);
   write(bench, font, {f.x + pad, middle - 0.5f * size.y}, bench.theme.faint, hint);
   bench.draw.PopClipRect();
