@@ -28,19 +28,24 @@ void next_scale(Ui& ui) {
 
 void actions(Ui& ui) {
   Desk& desk = ui.desk;
-  const float gap = ui.px(5);
+  const float gap = ui.px(5), wide = ui.px(12);
+  // Both words get the same margin: the usual one, or what a narrow panel leaves.
+  const char* scenarios = ui.state.library_open ? "Back" : "Scenarios";
+  const float first = measure(ui, Type::text, scenarios).x, second = measure(ui, Type::text, "Copy link").x;
+  const float icons = 4 * ui.row_height() + ui.px(8) + 3 * gap + 2 * wide;
+  const float spare = (ImGui::GetContentRegionAvail().x - icons - first - second) / 2;
+  const float margin = std::clamp(spare, ui.px(4), ui.px(22));
   if (icon_button(ui, "Undo", Icon::undo, can_undo(desk))) undo(desk);
   ImGui::SameLine(0, gap);
   if (icon_button(ui, "Redo", Icon::redo, can_redo(desk))) redo(desk);
-  ImGui::SameLine(0, ui.px(12));
-  const char* label = ui.state.library_open ? "Back" : "Scenarios";
-  if (button(ui, label, ui.state.library_open ? Weight::strong : Weight::plain)) {
+  ImGui::SameLine(0, wide);
+  if (button(ui, scenarios, ui.state.library_open ? Weight::strong : Weight::plain, first + margin)) {
     ui.state.library_open = !ui.state.library_open;
   }
   ImGui::SameLine(0, gap);
-  if (button(ui, "Copy link")) copy_link(desk);
+  if (button(ui, "Copy link", Weight::plain, second + margin)) copy_link(desk);
   tip(ui, "A link to this page that holds the whole scenario");
-  ImGui::SameLine(0, ui.px(12));
+  ImGui::SameLine(0, wide);
   if (icon_button(ui, desk.dark ? "Light colours" : "Dark colours", desk.dark ? Icon::sun : Icon::moon)) {
     desk.dark = !desk.dark;
   }
@@ -228,18 +233,19 @@ void draw_notice(Ui& ui, const Box& floor) {
   const ImVec2 letters = measure(ui, Type::text, notice.text, wrap);
   const float height = std::max(letters.y + ui.px(16), close), width = letters.x + 2 * side + close;
   const ImVec2 at{floor.x + (floor.width - width) / 2, floor.bottom() - height - ui.px(46)};
+  const ImU32 edge = notice.bad ? t.bad : t.rule;
   // A child of its own: it lies over the floor, and takes the hand before it.
   ImGui::SetCursorScreenPos(at);
   ImGui::BeginChild("notice", {width, height}, ImGuiChildFlags_None, ImGuiWindowFlags_NoScrollbar);
   ImDrawList& draw = *ImGui::GetWindowDrawList();
   draw.AddRectFilled(at, {at.x + width, at.y + height}, t.surface, ui.px(4));
-  draw.AddRect(at, {at.x + width, at.y + height}, notice.bad ? t.bad : t.rule, ui.px(4));
   draw.AddRectFilled(at, {at.x + ui.px(5), at.y + height}, notice.bad ? t.bad : t.good, ui.px(4));
   put_text(ui, Type::text, {at.x + side, at.y + (height - letters.y) / 2}, t.text, notice.text, wrap);
   if (notice.bad) {
     ImGui::SetCursorScreenPos({at.x + width - close, at.y + (height - close) / 2});
     if (icon_button(ui, "Close message", Icon::cross)) notice = {};
   }
+  draw.AddRect(at, {at.x + width, at.y + height}, edge, ui.px(4));
   ImGui::EndChild();
 }
 

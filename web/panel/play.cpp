@@ -15,40 +15,47 @@ int chosen_rate(const Playback& playback) {
   return -1;
 }
 
-void kept_controls(Ui& ui, float right) {
-  Desk& desk = ui.desk;
-  const bool narrow = desk.layout.upright;
-  const char* keep_label = narrow ? "Keep" : "Keep to compare";
-  if (!desk.kept) {
-    const float width = measure(ui, Type::text, keep_label).x + ui.px(22);
-    ImGui::SetCursorScreenPos({right - width, ImGui::GetCursorScreenPos().y});
-    if (button(ui, keep_label, Weight::plain, 0, has_drive(desk))) {
-      keep(desk);
-      say(desk, "Kept. What you change now is shown beside it.");
-    }
-    tip(ui,
-        "Keeps this drive beside the ones to come: its path on the floor, its curves, and the difference in "
-        "figures");
-    return;
-  }
-  const char* labels[] = {"Keep this", desk.show_kept ? "Hide kept" : "Show kept", "Go back", "Drop"};
-  float width = ui.px(5) * 3;
+float width_of(const Ui& ui, std::span<const char* const> labels) {
+  float width = ui.px(5) * static_cast<float>(labels.size() - 1);
   for (const char* label : labels) width += measure(ui, Type::text, label).x + ui.px(22);
-  ImGui::SetCursorScreenPos({right - width, ImGui::GetCursorScreenPos().y});
-  const ImVec2 at = ImGui::GetCursorScreenPos();
-  ImGui::GetWindowDrawList()->AddRectFilled({at.x - ui.px(12), at.y + ui.px(4)},
-                                            {at.x - ui.px(7), at.y + ui.row_height() - ui.px(4)},
+  return width;
+}
+
+void keep_button(Ui& ui, float left, float right) {
+  Desk& desk = ui.desk;
+  const char* labels[] = {"Keep to compare"};
+  if (width_of(ui, labels) > right - left) labels[0] = "Keep";
+  ImGui::SetCursorScreenPos({right - width_of(ui, labels), ImGui::GetCursorScreenPos().y});
+  if (button(ui, labels[0], Weight::plain, 0, has_drive(desk))) {
+    keep(desk);
+    say(desk, "Kept. What you change now is shown beside it.");
+  }
+  tip(ui, "Keeps this drive beside the ones to come: path, curves, and the difference in figures");
+}
+
+/// What is done with the kept choice, right-aligned within [left, right]; returns where it begins.
+float kept_controls(Ui& ui, float left, float right) {
+  Desk& desk = ui.desk;
+  const char* labels[] = {"Keep this", desk.show_kept ? "Hide kept" : "Show kept", "Go back", "Drop"};
+  const char* brief[] = {"Keep", desk.show_kept ? "Hide" : "Show", "Back", "Drop"};
+  if (width_of(ui, labels) + ui.px(14) > right - left) std::copy(std::begin(brief), std::end(brief), labels);
+  const ImVec2 at{right - width_of(ui, labels), ImGui::GetCursorScreenPos().y};
+  ImGui::SetCursorScreenPos(at);
+  ImGui::GetWindowDrawList()->AddRectFilled({at.x - ui.px(10), at.y + ui.px(4)},
+                                            {at.x - ui.px(5), at.y + ui.row_height() - ui.px(4)},
                                             ui.colours().kept);
   if (button(ui, labels[0])) keep(desk);
   tip(ui, "Compare with what is on screen now instead");
   ImGui::SameLine(0, ui.px(5));
   if (button(ui, labels[1])) desk.show_kept = !desk.show_kept;
+  tip(ui, "The kept drive beside this one");
   ImGui::SameLine(0, ui.px(5));
   if (button(ui, labels[2])) replace(desk, Scenario(desk.kept->scenario));
   tip(ui, "Puts the kept scenario back on screen");
   ImGui::SameLine(0, ui.px(5));
   if (button(ui, labels[3])) drop_kept(desk);
   tip(ui, "Forgets the kept drive");
+  return at.x - ui.px(10);
 }
 
 }  // namespace
@@ -90,20 +97,26 @@ void draw_play(Ui& ui, const Box& box) {
   ImGui::SameLine(0, gap);
   if (icon_button(ui, "One loop on", Icon::forward, ready)) step_loops(desk, 1);
   ImGui::SameLine(0, ui.px(12));
-  const float rates = ui.px(desk.layout.touch ? 264 : 228);
+  const float rates = ui.px(desk.layout.touch ? 252 : 216);
   const int picked = choice(ui, "speed", rate_names, chosen_rate(desk.playback), rates);
   if (picked >= 0) desk.playback.rate = play_rates[picked];
   ImGui::SameLine(0, ui.px(14));
-  const double end = ready ? desk.good.trace.rows.back().t : 0.0;
   const ImVec2 at = ImGui::GetCursorScreenPos();
-  const float text_y = y + (ui.row_height() - line_height(ui, Type::strong)) / 2;
-  if (!desk.layout.upright || !desk.kept) {
-    const float width =
-        put_text(ui, Type::strong, {at.x, text_y}, t.text, fixed(desk.playback.cursor, 2) + " s");
-    put_text(ui, Type::text, {at.x + width + ui.px(6), text_y}, t.faint, "of " + fixed(end, 2));
+  float right = box.right() - ui.px(10);
+  if (desk.kept) {
+    right = kept_controls(ui, at.x, right);
+  } else {
+    keep_button(ui, at.x + ui.px(150), right);
+    right -= ui.px(70);
   }
-  ImGui::SetCursorScreenPos({at.x, y});
-  kept_controls(ui, box.right() - ui.px(10));
+  const double end = ready ? desk.good.trace.rows.back().t : 0.0;
+  const std::string now = fixed(desk.playback.cursor, 2) + " s", whole = "of " + fixed(end, 2);
+  const float first = measure(ui, Type::strong, now).x, second = measure(ui, Type::text, whole).x;
+  const float text_y = y + (ui.row_height() - line_height(ui, Type::strong)) / 2;
+  if (at.x + first < right) put_text(ui, Type::strong, {at.x, text_y}, t.text, now);
+  if (at.x + first + ui.px(6) + second < right) {
+    put_text(ui, Type::text, {at.x + first + ui.px(6), text_y}, t.faint, whole);
+  }
 }
 
 }  // namespace lw::panel

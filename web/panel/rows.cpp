@@ -8,7 +8,7 @@ namespace {
 
 constexpr float least_column = 330.0f;  // CSS pixels at scale 1 below which a row gets cramped
 constexpr float gap = 22.0f;
-constexpr float label_width = 132.0f;
+constexpr float label_width = 137.0f;
 
 /// Whether a message about `about` ("sensors.gain[1]") belongs to the row of `path` ("sensors.gain").
 bool concerns(std::string_view about, std::string_view path) {
