@@ -39,4 +39,10 @@ struct LinkCall {
 /// A scenario file as a link, or a link as scenario text.
 Answer link_command(const LinkCall& call);
 
+struct LoopCall {
+  Input input;
+};
+/// The linear loop on the straight: margins, critical gain, poles.
+Answer loop_command(const LoopCall& call);
+
 }  // namespace lw::shell

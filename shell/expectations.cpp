@@ -4,6 +4,7 @@
 
 #include "engine/scenario/fields.h"
 #include "engine/scenario/value_text.h"
+#include "engine/theory/margins.h"
 #include "shell/driven.h"
 #include "shell/table.h"
 
@@ -30,6 +31,9 @@ const Measure* measure_of(std::string_view key) {
   return nullptr;
 }
 
+/// The one limit that is not about the drive: about the linear loop on the straight, and at least.
+constexpr std::string_view margin_key = "gain_margin_db_min";
+
 struct Judge {
   const Scenario& scenario;
   const Summary& summary;
@@ -42,7 +46,24 @@ struct Judge {
                     summary.outcome == expected, ""});
   }
 
+  void assert_margin(double limit) {
+    Assertion assertion{std::string(margin_key), limit, nullptr, false, ""};
+    assertion.at_least = true;
+    const Result<SampledLoop> loop = linearise(scenario);
+    if (!loop) {
+      assertion.why = text_of(loop.error());
+    } else {
+      const Margins found = margins(*loop);
+      if (found.gain_high) assertion.actual = decibels(*found.gain_high);
+      const bool enough = found.gain_high ? decibels(*found.gain_high) >= limit : found.stable;
+      assertion.holds = enough && (found.stable || limit < 0.0);
+      if (!found.stable) assertion.why = "the linear loop on the straight is not stable";
+    }
+    made.push_back(assertion);
+  }
+
   void assert_value(const FieldInfo& info, double limit) {
+    if (info.key == margin_key) return assert_margin(limit);
     const double actual = measure_of(info.key)->of(summary);
     Assertion assertion{std::string(info.key), limit, actual, actual <= limit, ""};
     if (info.key == "time_s_max" && !ended_well()) {
@@ -62,13 +83,15 @@ std::optional<Error> find_unasserted(const Loaded& loaded) {
   std::optional<Error> error;
   each_expect_field(loaded.scenario.expect, [&](const FieldInfo& info, const auto& value) {
     if constexpr (std::is_same_v<std::decay_t<decltype(value)>, std::optional<double>>) {
-      if (value && !measure_of(info.key) && !error) error = not_asserted(loaded, info, *value);
+      if (value && info.key != margin_key && !measure_of(info.key) && !error)
+        error = not_asserted(loaded, info, *value);
     }
   });
   return error;
 }
 
 std::string shown(const Json& value) {
+  if (value.is_null()) return "none";
   return value.is_number() ? brief(value.get<double>(), 5) : value.get<std::string>();
 }
 
@@ -92,7 +115,8 @@ std::size_t failures(const Checked& checked) {
 }
 
 std::string sentence(const Assertion& assertion) {
-  const char* relation = assertion.expected.is_number() ? ", expected at most " : ", expected ";
+  const char* bound = assertion.at_least ? ", expected at least " : ", expected at most ";
+  const char* relation = assertion.expected.is_number() ? bound : ", expected ";
   std::string text = assertion.key + ": " + shown(assertion.actual) + relation + shown(assertion.expected);
   return assertion.why.empty() ? text : text + "; " + assertion.why;
 }

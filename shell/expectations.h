@@ -15,7 +15,8 @@ struct Assertion {
   Json expected;    // a word or a number
   Json actual;
   bool holds = false;
-  std::string why;  // of a failure that the two values do not explain
+  std::string why;        // of a failure that the two values do not explain
+  bool at_least = false;  // a lower limit; a number without it is an upper one
 };
 
 struct Checked {

@@ -34,6 +34,7 @@ struct Line {
   CheckCall check;
   DescribeCall describe;
   LinkCall link;
+  LoopCall loop;
 };
 
 CLI::App* add_command(Line& line, const char* name, const char* does, std::function<Answer()> call) {
@@ -90,6 +91,11 @@ void add_commands(Line& line) {
       ->type_name("ADDRESS")
       ->capture_default_str();
   link->footer("Example: linewright link scenarios/straight.toml > straight.link");
+
+  CLI::App* loop = add_command(line, "loop", "The linear loop on the straight: margins, critical gain, poles",
+                               [&line] { return loop_command(line.loop); });
+  add_input(loop, line.loop.input);
+  loop->footer("Example: linewright loop scenarios/straight.toml --set controller.kp=0.5");
 }
 
 /// The candidate nearest to a wrong word, or nothing when none is near.

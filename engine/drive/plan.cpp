@@ -29,6 +29,33 @@ double floor_margin(const Scenario& scenario) {
 /// along.
 double tracking_window(const Scenario& scenario) { return 2e-3 * scenario.drive.lost_mm; }
 
+/// Steps per unit for a rounding step; 0 stands for no rounding, which the wiring leaves out.
+double inverse_step(double step) { return step > 0.0 ? 1.0 / step : 0.0; }
+
+Task<double> task_of(const Scenario& scenario, const Centreline& line) {
+  const CoursePoint begin = point_at(line, 0.0);
+  const double offset = 1e-3 * scenario.drive.start_offset_mm;
+  const double forward = 1e-3 * scenario.sensors.forward_mm;
+  const double turned = scenario.drive.start_heading_deg * rad_per_deg;
+  return {.finish = line.closed ? static_cast<double>(scenario.drive.laps) * line.length : line.length,
+          .lost = 1e-3 * scenario.drive.lost_mm,
+          .time_limit = scenario.drive.time_limit_s,
+          .start_x = begin.x - offset * begin.tangent_y,
+          .start_y = begin.y + offset * begin.tangent_x,
+          .start_heading = direction_angle(begin.tangent_x, begin.tangent_y) + turned,
+          .start_progress = held(forward, 0.0, line.length)};
+}
+
+int queue_length(const Loop& loop, double delay_ms) {
+  const double shortest = loop.period_ms * (1.0 - 1e-2 * loop.jitter_pct);
+  const double waiting = delay_ms / shortest + 3.0;  // one now acting, one fresh, one for rounding
+  int length = 4;
+  while (length < waiting) length *= 2;
+  return length;
+}
+
+}  // namespace
+
 Drivetrain<double> drivetrain_of(const Vehicle& vehicle) {
   const double left = 0.5e-3 * vehicle.wheel_left_mm, right = 0.5e-3 * vehicle.wheel_right_mm;
   const double track = 1e-3 * vehicle.track_width_mm;
@@ -44,9 +71,6 @@ Drivetrain<double> drivetrain_of(const Vehicle& vehicle) {
           .turn_time = 1e-3 * vehicle.turn_time_constant_ms,
           .slide_limit = vehicle.grip > 0.0 ? vehicle.grip * standard_gravity : HUGE_VAL};
 }
-
-/// Steps per unit for a rounding step; 0 stands for no rounding, which the wiring leaves out.
-double inverse_step(double step) { return step > 0.0 ? 1.0 / step : 0.0; }
 
 Optics<double> optics_of(const Sensors& sensors, const FloorLook& look) {
   Optics<double> optics{};
@@ -87,28 +111,6 @@ Law<double> law_of(const Controller& controller, const Sensors& sensors, const V
           .command_steps_per_unit = inverse_step(step)};
 }
 
-Task<double> task_of(const Scenario& scenario, const Centreline& line) {
-  const CoursePoint begin = point_at(line, 0.0);
-  const double offset = 1e-3 * scenario.drive.start_offset_mm;
-  const double forward = 1e-3 * scenario.sensors.forward_mm;
-  const double turned = scenario.drive.start_heading_deg * rad_per_deg;
-  return {.finish = line.closed ? static_cast<double>(scenario.drive.laps) * line.length : line.length,
-          .lost = 1e-3 * scenario.drive.lost_mm,
-          .time_limit = scenario.drive.time_limit_s,
-          .start_x = begin.x - offset * begin.tangent_y,
-          .start_y = begin.y + offset * begin.tangent_x,
-          .start_heading = direction_angle(begin.tangent_x, begin.tangent_y) + turned,
-          .start_progress = held(forward, 0.0, line.length)};
-}
-
-int queue_length(const Loop& loop, double delay_ms) {
-  const double shortest = loop.period_ms * (1.0 - 1e-2 * loop.jitter_pct);
-  const double waiting = delay_ms / shortest + 3.0;  // one now acting, one fresh, one for rounding
-  int length = 4;
-  while (length < waiting) length *= 2;
-  return length;
-}
-
 Wiring wiring_of(const Scenario& scenario) {
   const Sensors& sensors = scenario.sensors;
   const bool second_is_left = sensors.lateral_mm.size() == 2 && sensors.lateral_mm[1] > sensors.lateral_mm[0];
@@ -131,8 +133,6 @@ Wiring wiring_of(const Scenario& scenario) {
   wiring.seed = static_cast<std::uint64_t>(scenario.drive.seed);
   return wiring;
 }
-
-}  // namespace
 
 std::uint64_t ground_key(const Scenario& scenario) {
   std::uint64_t hash = fnv_start;

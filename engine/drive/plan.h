@@ -26,6 +26,13 @@ std::uint64_t ground_key(const Scenario& scenario);
 /// Builds centreline and floor. Errors: those of make_centreline and make_floor.
 Result<std::shared_ptr<const Ground>> make_ground(const Scenario& scenario);
 
+/// The parts of a rig that need no ground, in SI units: what the theory of the loop shares with the drive.
+Drivetrain<double> drivetrain_of(const Vehicle& vehicle);
+Optics<double> optics_of(const Sensors& sensors, const FloorLook& look);
+Law<double> law_of(const Controller& controller, const Sensors& sensors, const Vehicle& vehicle);
+/// What of a scenario is connected.
+Wiring wiring_of(const Scenario& scenario);
+
 struct Plan {
   Rig<double> rig;                       // constants of this drive
   Wiring wiring;                         // what is connected: the same for every drive of a batch

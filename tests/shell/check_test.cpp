@@ -136,10 +136,19 @@ TEST_CASE("text in a report is escaped", "[shell]") {
 }
 
 TEST_CASE("an expectation that needs an engine of a later version never passes in silence", "[shell]") {
-  for (const char* key : {"stress_share_min = 0.9", "gain_margin_db_min = 6.0"}) {
-    const Ran ran = linewright("check --json -", expecting(std::string(key) + "\noutcome = \"finished\"\n"));
-    CHECK(ran.code == 2);
-    CHECK(ran.out.empty());
-    CHECK(ran.err.find("this version cannot assert it, and does not pass over it") != std::string::npos);
-  }
+  const Ran ran = linewright("check --json -", expecting("stress_share_min = 0.9\noutcome = \"finished\"\n"));
+  CHECK(ran.code == 2);
+  CHECK(ran.out.empty());
+  CHECK(ran.err.find("this version cannot assert it, and does not pass over it") != std::string::npos);
+}
+
+TEST_CASE("a gain margin is a limit from below, and an unstable loop fails it with the reason", "[shell]") {
+  const Ran kept = linewright("check -", expecting("gain_margin_db_min = 6.0\n"));
+  CHECK(kept.code == 0);
+  const Ran missed = linewright("check -", expecting("gain_margin_db_min = 60.0\n"));
+  CHECK(missed.code == 1);
+  CHECK(missed.out.find("expected at least 60") != std::string::npos);
+  const Ran unstable = linewright("check - --set controller.kp=3", expecting("gain_margin_db_min = 1.0\n"));
+  CHECK(unstable.code == 1);
+  CHECK(unstable.out.find("the linear loop on the straight is not stable") != std::string::npos);
 }

@@ -26,9 +26,9 @@ TEST_CASE("a wrong call exits 2, prints nothing on stdout and says on stderr wha
   const Wrong calls[] = {
       {"drvie x.toml", "unknown command drvie; did you mean drive?"},
       {"Check x.toml", "unknown command Check; did you mean check?"},
-      {"zzzzzzzz", "unknown command zzzzzzzz; the commands are drive, check, describe, link"},
+      {"zzzzzzzz", "unknown command zzzzzzzz; the commands are drive, check, describe, link, loop"},
       {"--versoin", "unknown option --versoin; did you mean --version?"},
-      {"''", "unknown command \"\"; the commands are drive, check, describe, link"},
+      {"''", "unknown command \"\"; the commands are drive, check, describe, link, loop"},
       {"drive", "drive: SCENARIO is required; see linewright drive --help"},
       {"check", "check: SCENARIO is required; see linewright check --help"},
       {"drive --jsno x.toml", "unknown option --jsno of drive; did you mean --json?"},
@@ -52,7 +52,7 @@ TEST_CASE("without a command it prints the help on stderr and exits 2", "[shell]
 TEST_CASE("help names every command and option, version tells the build", "[shell]") {
   const Ran help = linewright("--help");
   CHECK(help.code == 0);
-  for (const char* word : {"drive", "check", "describe", "link", "--version", "Exit code"})
+  for (const char* word : {"drive", "check", "describe", "link", "loop", "--version", "Exit code"})
     CHECK(help.out.find(word) != std::string::npos);
   const Ran drive = linewright("drive --help");
   CHECK(drive.code == 0);
