@@ -74,9 +74,10 @@ ImU32 faded(ImU32 c, float opacity) {
 }
 
 ImU32 deviation_colour(bool dark, double share) {
-  // From calm to alarm, lightness falling (night: rising) with it, so that it can be read without hue.
-  constexpr ImU32 night_ramp[] = {rgb(0x2FB8AC), rgb(0x7BE08F), rgb(0xFFD166), rgb(0xFF8A4C), rgb(0xFF4D5E)};
-  constexpr ImU32 day_ramp[] = {rgb(0x12968B), rgb(0x4C9A2A), rgb(0xC28A00), rgb(0xD9541E), rgb(0xB3121E)};
+  // From calm to alarm by way of yellow, without the greens that some eyes take for the oranges: any two of
+  // the five stay apart for them as well (tests/web/view_colours.cpp).
+  constexpr ImU32 night_ramp[] = {rgb(0x2FA3C4), rgb(0x79D8C8), rgb(0xFFEFA8), rgb(0xFFA33A), rgb(0xF23D55)};
+  constexpr ImU32 day_ramp[] = {rgb(0x2A8FC4), rgb(0x1F9E94), rgb(0xD9A100), rgb(0xD9541E), rgb(0x96103C)};
   const ImU32* ramp = dark ? night_ramp : day_ramp;
   constexpr int last = 4;
   const double at = std::clamp(share, 0.0, 1.0) * last;
