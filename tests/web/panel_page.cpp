@@ -145,6 +145,10 @@ TEST_CASE("a bad file or link says why, and what was on screen stays") {
   hand.frame(2);
   CHECK(hand.has("Close message"));
   CHECK(same(on_screen(), before));
+  app::file_opened("open.toml", "format = \"linewright 1\"\n[course]\npieces = [{ straight_mm = 300.0 }]\n");
+  hand.frame(2);
+  CHECK(hand.has("Close message"));
+  CHECK(same(on_screen(), before));
   app::text_pasted("a shopping list");
   hand.frame(2);
   CHECK(same(on_screen(), before));

@@ -13,6 +13,8 @@ foreach(file IN LISTS FILES)
   string(APPEND table "    {\"${name}\", text_${count}, ${size}},\n")
   math(EXPR count "${count} + 1")
 endforeach()
-file(WRITE "${OUT}" "// Written by web/build/library.cmake.\n#include \"web/panel/library.h\"\n\nnamespace lw::panel {\n"
-     "namespace {\n${arrays}}  // namespace\nconst LibraryFile library_files[] = {\n${table}    {nullptr, nullptr, 0}};\n"
-     "const std::size_t library_count = ${count};\n}  // namespace lw::panel\n")
+string(CONCAT text "// Written by web/build/library.cmake.\n#include \"web/panel/library.h\"\n\n"
+       "namespace lw::panel {\nnamespace {\n${arrays}}  // namespace\n"
+       "const LibraryFile library_files[] = {\n${table}    {nullptr, nullptr, 0}};\n"
+       "const std::size_t library_count = ${count};\n}  // namespace lw::panel\n")
+file(WRITE "${OUT}" "${text}")

@@ -34,8 +34,15 @@ std::string kilobytes(std::size_t bytes) {
 bool take_text(Desk& desk, std::string_view text, std::string_view name) {
   const bool link = looks_like_link(trimmed(text));
   Result<Scenario> scenario = link ? decode_link(text) : read(text, name);
+  std::optional<Error> error;
   if (!scenario.ok()) {
-    complain(desk, "Not opened. " + text_of(scenario.error()));
+    error = scenario.error();
+  } else if (const Result<Plan> plan = make_plan(*scenario); !plan.ok()) {  // a course that cannot be laid
+    error = plan.error();
+    error->where = error->where.empty() ? std::string(name) : std::string(name) + ": " + error->where;
+  }
+  if (error) {
+    complain(desk, "Not opened. " + text_of(*error));
     return false;
   }
   const std::string title = scenario->title;

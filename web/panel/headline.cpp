@@ -81,6 +81,7 @@ void draw_headline(Ui& ui, const Box& box) {
   const float figures_height = line_height(ui, Type::strong) + line_height(ui, Type::small);
   const float room = box.height - figures_height - ui.px(22);
   if (measure(ui, type, sentence, width).y > room) type = Type::strong;
+  if (measure(ui, type, sentence, width).y > room) type = Type::small;  // two lines
   if (measure(ui, type, sentence, width).y > room) sentence = fitted(ui, type, sentence, width);
   put_text(ui, type, {x, box.y + ui.px(9)}, desk.error ? t.bad : t.text, sentence, width);
   // An item of its own, so that the sentence can be read by whoever works the page by its labels.
