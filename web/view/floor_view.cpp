@@ -191,7 +191,7 @@ void draw_refusal(const Bench& bench) {
 
 void fit_floor(FloorView& floor, const panel::Desk& desk) {
   const Frame whole = floor.view.frame;
-  const float unit = desk.scale, top = floor.band, bottom = 30 * unit;
+  const float unit = desk.scale, top = floor.band, bottom = footer_height * unit;
   Frame free = whole;
   free.y += top;
   free.height = std::max(40.0f, whole.height - top - bottom);
@@ -208,7 +208,7 @@ void fit_floor(FloorView& floor, const panel::Desk& desk) {
     Frame left = free;
     left.width -= beside;
     const View smaller = fitted(left, box, 26 * unit);
-    if (smaller.scale > 0.75 * view.scale) view = smaller, free = left;
+    if (smaller.scale > 0.65 * view.scale) view = smaller, free = left;
   }
   view.centre_x += (whole.x + 0.5 * whole.width - free.x - 0.5 * free.width) / view.scale;
   view.centre_y -= (whole.y + 0.5 * whole.height - free.y - 0.5 * free.height) / view.scale;

@@ -57,8 +57,8 @@ float draw_legend(const Bench& bench, float right, float middle) {
   return x + gap;
 }
 
-/// A bar as long as one square of the grid. Returns its left edge.
-float draw_scale(const Bench& bench, float right, float middle, double grid_mm) {
+/// A bar as long as one square of the grid; `right` is the right edge of its name.
+void draw_scale(const Bench& bench, float right, float middle, double grid_mm) {
   ImFont* font = page::typeface().small;
   const float unit = bench.unit;
   const auto width = static_cast<float>(grid_mm * bench.floor.view.scale);
@@ -70,7 +70,6 @@ float draw_scale(const Bench& bench, float right, float middle, double grid_mm) 
   bench.draw.AddRectFilled({x, middle - 1}, {x + width, middle + 1}, colour);
   for (const float end : {x, x + width})
     bench.draw.AddRectFilled({end - 1, middle - 5 * unit}, {end + 1, middle + 5 * unit}, colour);
-  return x;
 }
 
 }  // namespace
@@ -95,22 +94,24 @@ void draw_bubble(const Bench& bench, Pixel at, std::string_view text, ImU32 colo
                      text.data() + text.size(), wrap);
 }
 
-float footer_height(const Bench& bench) { return 30 * bench.unit; }
-
 void draw_footer(const Bench& bench, double grid_mm, std::string_view hint) {
   const Frame& f = bench.floor.view.frame;
-  const float height = footer_height(bench), top = f.y + f.height - height, middle = top + 0.5f * height;
   const float pad = 12 * bench.unit;
+  // Two lines where the words do not fit beside scale and legend.
+  const float beside = 420 * bench.unit + static_cast<float>(grid_mm * bench.floor.view.scale);
+  ImFont* font = page::typeface().small;
+  const float wrap = std::max(f.width - beside, 120 * bench.unit);
+  const ImVec2 size =
+      font->CalcTextSizeA(text_size(font), 1e9f, wrap, hint.data(), hint.data() + hint.size());
+  const float height = std::max(footer_height * bench.unit, size.y + 10 * bench.unit);
+  const float top = f.y + f.height - height, middle = top + 0.5f * height;
   bench.draw.AddRectFilled({f.x, top}, {f.x + f.width, f.y + f.height},
                            panel::faded(bench.theme.ground, 0.82f));
   float left = f.x + f.width - pad;
   if (panel::has_drive(bench.desk)) left = draw_legend(bench, left, middle) - 2.2f * pad;
-  left = draw_scale(bench, left, middle, grid_mm) - 2 * pad;
-  ImFont* font = page::typeface().small;
-  const ImVec2 size = measured(font, hint);
-  bench.draw.PushClipRect({f.x, top}, {left, f.y + f.height}, true);
-  write(bench, font, {f.x + pad, middle - 0.5f * size.y}, bench.theme.faint, hint);
-  bench.draw.PopClipRect();
+  draw_scale(bench, left, middle, grid_mm);
+  bench.draw.AddText(font, text_size(font), {f.x + pad, middle - 0.5f * size.y}, bench.theme.faint,
+                     hint.data(), hint.data() + hint.size(), wrap);
 }
 
 float close_up_side(const Frame& frame, float unit) {

@@ -12,7 +12,7 @@ void draw_bubble(const Bench& bench, Pixel at, std::string_view text, ImU32 colo
 
 /// Lower edge of the floor: what a drag does, one grid square's length, and what the colours mean.
 void draw_footer(const Bench& bench, double grid_mm, std::string_view hint);
-float footer_height(const Bench& bench);
+inline constexpr float footer_height = 30;  // CSS pixels at least
 
 /// The vehicle with the floor around it, large, in the upper right corner of the frame, below `top`.
 void draw_close_up(const Bench& bench, float top);
