@@ -1,10 +1,11 @@
-"""Holds a drive against SciPy's DOP853 (Hairer, Norsett and Wanner) on the differential equations of the vehicle.
+"""Holds a drive against SciPy's DOP853 (Hairer, Norsett and Wanner) on the differential equations of the
+vehicle.
 
     drive_ode.py SCENARIO.toml TRACE.csv
 
-Reads the wheel commands of every loop from the trace, works the vehicle's constants out of the scenario by itself, and
-integrates lag, heading and position with tight tolerances from the start, without ever being corrected. Pose and wheel
-motion have to agree with the trace at every loop to 1e-6 m and 1e-6 rad.
+Reads the wheel commands of every loop from the trace, works the vehicle's constants out of the scenario
+by itself, and integrates lag, heading and position with tight tolerances from the start, without ever
+being corrected. Pose and wheel motion have to agree with the trace at every loop to 1e-6 m and 1e-6 rad.
 """
 import csv
 import math

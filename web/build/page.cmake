@@ -16,7 +16,8 @@ add_custom_command(OUTPUT ${typeface_source}
 # The scenarios that the page offers, likewise.
 set(library_source ${CMAKE_BINARY_DIR}/generated/library_data.cpp)
 file(GLOB library_files CONFIGURE_DEPENDS scenarios/*.toml)
-add_custom_command(OUTPUT ${library_source} DEPENDS ${library_files} ${CMAKE_SOURCE_DIR}/web/build/library.cmake
+add_custom_command(OUTPUT ${library_source}
+                   DEPENDS ${library_files} ${CMAKE_SOURCE_DIR}/web/build/library.cmake
                    COMMAND ${CMAKE_COMMAND} "-DOUT=${library_source}" "-DFILES=${library_files}"
                            -P ${CMAKE_SOURCE_DIR}/web/build/library.cmake VERBATIM)
 
