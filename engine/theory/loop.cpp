@@ -170,12 +170,21 @@ SampledLoop with_gains(SampledLoop loop, LoopGains gains) {
   return loop;
 }
 
-Complex law_response(const SampledLoop& loop, double omega) {
-  const Complex s = shift_at(omega * loop.period), z = 1.0 + s;
+Complex integral_response(const SampledLoop& loop, double omega) {
+  const Complex s = shift_at(omega * loop.period);
+  return (1.0 + s) / s;
+}
+
+Complex derivative_response(const SampledLoop& loop, double omega) {
+  const Complex s = shift_at(omega * loop.period);
   const double share = loop.period / (loop.filter + loop.period);
+  return share * s / (s + share);
+}
+
+Complex law_response(const SampledLoop& loop, double omega) {
   Complex law = loop.gains.kp;
-  if (loop.gains.ki != 0.0) law += loop.gains.ki * z / s;
-  if (loop.gains.kd != 0.0) law += loop.gains.kd * share * s / (s + share);
+  if (loop.gains.ki != 0.0) law += loop.gains.ki * integral_response(loop, omega);
+  if (loop.gains.kd != 0.0) law += loop.gains.kd * derivative_response(loop, omega);
   return law;
 }
 

@@ -83,6 +83,9 @@ SampledLoop with_gains(SampledLoop loop, LoopGains gains);
 std::complex<double> law_response(const SampledLoop& loop, double omega);   // error -> steer
 std::complex<double> path_response(const SampledLoop& loop, double omega);  // steer -> minus the error
 std::complex<double> response(const SampledLoop& loop, double omega);       // the open loop L
+/// The law's terms for a gain of 1: law = kp + ki integral + kd derivative.
+std::complex<double> integral_response(const SampledLoop& loop, double omega);
+std::complex<double> derivative_response(const SampledLoop& loop, double omega);
 
 /// How far the forward offset carries P alone. Small gains are stable exactly when
 ///   forward / v > t + tau + T / 2 + sensor lag,

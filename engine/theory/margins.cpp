@@ -12,10 +12,13 @@ namespace {
 using Complex = std::complex<double>;
 
 constexpr double grid_ratio = 1.04;     // between neighbouring frequencies
-constexpr double grid_turn = 0.3;       // rad, the most that delay turns the phase between neighbours
+constexpr double grid_turn = 0.6;       // rad, the most that delay turns the phase between neighbours
 constexpr double below_corners = 1e-3;  // lowest frequency over the lowest corner
 constexpr double lowest_share = 1e-9;   // lowest frequency over pi / T, whatever the corners
-constexpr double refined = 1e-13;       // of a frequency, relative
+// With thousands of periods of delay the grid would be as long. It is then cut: what follows are swings of
+// gains far beyond the first hundreds, all of which leave the unit circle.
+constexpr std::size_t most_frequencies = 6000;
+constexpr double refined = 1e-13;  // of a frequency, relative
 
 // ---- where to look ------------------------------------------------------------------------------------
 
@@ -36,36 +39,56 @@ double lowest_corner(const SampledLoop& loop, const LoopGains& gains) {
   return corner;
 }
 
-Sweep swept(const SampledLoop& loop, double corner) {
-  const double last = pi / loop.period;
-  const double turn_step = grid_turn / (loop.delay + 2.0 * loop.period);
+Sweep swept(const SampledLoop& loop, std::vector<double> omega) {
   Sweep over;
-  double omega = std::max(below_corners * corner, lowest_share * last);
-  while (omega < last) {
-    over.omega.push_back(omega);
-    omega = std::min(omega * grid_ratio, omega + turn_step);
+  over.omega = std::move(omega);
+  for (const double at : over.omega) {
+    over.path.push_back(path_response(loop, at));
+    over.integral.push_back(integral_response(loop, at));
+    over.derivative.push_back(derivative_response(loop, at));
   }
-  over.omega.push_back(last);
-  for (const double at : over.omega) over.path.push_back(path_response(loop, at));
   return over;
 }
 
+std::vector<double> grid_of(const SampledLoop& loop, double corner) {
+  const double last = pi / loop.period;
+  const double turn_step = grid_turn / (loop.delay + 2.0 * loop.period);
+  std::vector<double> grid;
+  double omega = std::max(below_corners * corner, lowest_share * last);
+  while (omega < last && grid.size() < most_frequencies) {
+    grid.push_back(omega);
+    omega = std::min(omega * grid_ratio, omega + turn_step);
+  }
+  grid.push_back(last);
+  return grid;
+}
+
 std::vector<Complex> open_loop(const SampledLoop& loop, const Sweep& over) {
+  const LoopGains& gains = loop.gains;
   std::vector<Complex> open;
   open.reserve(over.omega.size());
-  const bool constant = loop.gains.ki == 0.0 && loop.gains.kd == 0.0;
   for (std::size_t i = 0; i < over.omega.size(); ++i)
-    open.push_back((constant ? Complex(loop.gains.kp) : law_response(loop, over.omega[i])) * over.path[i]);
+    open.push_back((gains.kp + gains.ki * over.integral[i] + gains.kd * over.derivative[i]) * over.path[i]);
   open.back().imag(0.0);  // at z = -1 everything is real
   return open;
 }
 
 // ---- ranges of gain -----------------------------------------------------------------------------------
 
+/// A place where L is real and negative. Only those that end a range are refined.
 struct Crossing {
   double gain, omega;
-  int poles;  // how many leave the unit circle as the gain grows past; negative = enter it
+  int poles;         // how many leave the unit circle as the gain grows past; negative = enter it
+  double low, high;  // rad/s, around it; equal = exact as it is
 };
+
+Crossing refined_from(const SampledLoop& loop, Crossing crossing) {
+  if (crossing.low == crossing.high) return crossing;
+  const auto imag = [&](double omega) { return response(loop, omega).imag(); };
+  crossing.omega = bracketed_root(imag, crossing.low, crossing.high, refined * crossing.low);
+  crossing.gain = -1.0 / response(loop, crossing.omega).real();
+  return crossing;
+}
 
 /// Unstable poles for small factors: those that leave z = 1. With m poles there and L ~ c / (j omega)^m they
 /// start along the m-th roots of -c.
@@ -79,17 +102,19 @@ int unstable_at_small_gain(const SampledLoop& loop, Complex lowest) {
 std::vector<Crossing> crossings_of(const SampledLoop& loop, const Sweep& over,
                                    const std::vector<Complex>& open) {
   std::vector<Crossing> found;
-  const auto imag = [&](double omega) { return response(loop, omega).imag(); };
   const std::size_t last = open.size() - 1;
   for (std::size_t i = 0; i + 1 < last; ++i) {
-    const bool below = open[i].imag() < 0.0, below_next = open[i + 1].imag() < 0.0;
-    if (below == below_next || (open[i].real() > 0.0 && open[i + 1].real() > 0.0)) continue;
-    const double omega = bracketed_root(imag, over.omega[i], over.omega[i + 1], refined * over.omega[i]);
+    const double here = open[i].imag(), next = open[i + 1].imag();
+    if ((here < 0.0) == (next < 0.0) || (open[i].real() > 0.0 && open[i + 1].real() > 0.0)) continue;
+    const double low = over.omega[i], high = over.omega[i + 1];
+    const double omega = low + (high - low) * here / (here - next);
     const double real = response(loop, omega).real();
-    if (real < 0.0) found.push_back({-1.0 / real, omega, below ? 2 : -2});
+    if (real < 0.0) found.push_back({-1.0 / real, omega, here < 0.0 ? 2 : -2, low, high});
   }
-  if (open[last].real() < 0.0)
-    found.push_back({-1.0 / open[last].real(), over.omega[last], open[last - 1].imag() < 0.0 ? 1 : -1});
+  if (open[last].real() < 0.0) {
+    const double omega = over.omega[last];
+    found.push_back({-1.0 / open[last].real(), omega, open[last - 1].imag() < 0.0 ? 1 : -1, omega, omega});
+  }
   std::sort(found.begin(), found.end(), [](const Crossing& a, const Crossing& b) { return a.gain < b.gain; });
   return found;
 }
@@ -100,14 +125,18 @@ std::vector<GainRange> ranges_of(const SampledLoop& loop, const Sweep& over,
   std::vector<GainRange> ranges;
   int unstable = unstable_at_small_gain(loop, open.front());
   GainRange range{0.0, HUGE_VAL, 0.0, 0.0};
-  for (const Crossing& crossing : crossings_of(loop, over, open)) {
-    if (unstable == 0) {
-      range.high = crossing.gain;
-      range.high_omega = crossing.omega;
-      ranges.push_back(range);
+  for (const Crossing& near : crossings_of(loop, over, open)) {
+    const int after = unstable + near.poles;
+    if (unstable == 0 || after == 0) {
+      const Crossing crossing = refined_from(loop, near);
+      if (unstable == 0) {
+        range.high = crossing.gain;
+        range.high_omega = crossing.omega;
+        ranges.push_back(range);
+      }
+      range = {crossing.gain, HUGE_VAL, crossing.omega, 0.0};
     }
-    unstable += crossing.poles;
-    range = {crossing.gain, HUGE_VAL, crossing.omega, 0.0};
+    unstable = after;
   }
   if (unstable == 0) ranges.push_back(range);
   return ranges;
@@ -173,10 +202,10 @@ void set_sensitivity(const SampledLoop& loop, const Sweep& over, const std::vect
 
 }  // namespace
 
-Sweep sweep(const SampledLoop& loop) { return swept(loop, lowest_corner(loop, loop.gains)); }
+Sweep sweep(const SampledLoop& loop) { return swept(loop, grid_of(loop, lowest_corner(loop, loop.gains))); }
 
 Sweep sweep(const SampledLoop& loop, const LoopGains& one, const LoopGains& other) {
-  return swept(loop, std::min(lowest_corner(loop, one), lowest_corner(loop, other)));
+  return swept(loop, grid_of(loop, std::min(lowest_corner(loop, one), lowest_corner(loop, other))));
 }
 
 std::vector<GainRange> stable_ranges(const SampledLoop& loop, const Sweep& over) {
@@ -216,7 +245,14 @@ Critical critical(const SampledLoop& loop) {
 }
 
 ResponseCurve response_curve(const SampledLoop& loop) {
-  const Sweep over = sweep(loop);
+  Sweep over = sweep(loop);
+  const Margins at = margins(loop, over);
+  over.omega.insert(over.omega.end(),
+                    {at.gain_high_omega, at.gain_low_omega, at.phase_omega, at.sensitivity_omega});
+  std::sort(over.omega.begin(), over.omega.end());
+  over.omega.erase(std::unique(over.omega.begin(), over.omega.end()), over.omega.end());
+  over.omega.erase(over.omega.begin(), std::upper_bound(over.omega.begin(), over.omega.end(), 0.0));
+  over = swept(loop, std::move(over.omega));
   const std::vector<Complex> open = open_loop(loop, over);
   const int integrators = loop.gains.ki != 0.0 ? 3 : loop.gains.kp != 0.0 ? 2 : 1;
   ResponseCurve curve;

@@ -20,10 +20,11 @@
 
 namespace lw {
 
-/// Frequencies (rad/s, rising, the last is pi / T) and the path's response there, for use with many laws.
+/// Frequencies (rad/s, rising, the last is pi / T) and the responses there of which the open loop is made,
+/// for use with many gains: L = (kp + ki integral + kd derivative) path.
 struct Sweep {
   std::vector<double> omega;
-  std::vector<std::complex<double>> path;
+  std::vector<std::complex<double>> path, integral, derivative;
 };
 /// A sweep for the loop's own law.
 Sweep sweep(const SampledLoop& loop);
@@ -79,7 +80,8 @@ struct Critical {
 };
 Critical critical(const SampledLoop& loop);
 
-/// Curves of the open loop for Bode and Nyquist views, one entry a frequency, all of the same length.
+/// Curves of the open loop for Bode and Nyquist views, one entry a frequency, all of the same length. The
+/// frequencies of the margins and of the sensitivity peak are among them.
 struct ResponseCurve {
   std::vector<double> omega;        // rad/s, rising to pi / T
   std::vector<double> real, imag;   // of L
