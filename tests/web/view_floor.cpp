@@ -240,9 +240,7 @@ TEST_CASE("pieces: chosen by a press, reshaped by their handle, added with their
   CHECK(bank.course().closed);
   CHECK(bank.course().pieces.size() > 4);
   CHECK(bank.steps() == steps + 1);
-  bank.desk.selection = {};
-  bank.hand->frame();
-  bank.hand->click("Turn into points");
+  bank.hand->click("As points");
   CHECK_FALSE(bank.desk.error);
   CHECK(bank.course().pieces.empty());
   CHECK(bank.course().corners.size() == 1);

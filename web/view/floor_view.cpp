@@ -203,10 +203,9 @@ void fit_floor(FloorView& floor, const panel::Desk& desk) {
     box.add(box.low_x - half, box.low_y - half), box.add(box.high_x + half, box.high_y + half);
   View view = fitted(free, box, 26 * unit);
   // Beside the close-up, unless that would make the course much smaller than below it.
-  const float beside = floor.close_up ? close_up_side(whole, unit) : 0.0f;
-  if (beside > 0.0f) {
+  if (floor.beside > 0.0f) {
     Frame left = free;
-    left.width -= beside;
+    left.width -= floor.beside;
     const View smaller = fitted(left, box, 26 * unit);
     if (smaller.scale > 0.65 * view.scale) view = smaller, free = left;
   }
@@ -246,8 +245,11 @@ void show_floor(FloorView& floor, panel::Desk& desk) {
   const float options = show_options(bench);
   const bool banded = options > frame.y && desk.tool != panel::Tool::look;
   const float band = banded ? options + 8 * bench.unit : frame.y;
-  const bool covered = floor.band != band - frame.y;
+  const bool wants_close_up = floor.close_up && desk.tool == panel::Tool::look;
+  const float beside = wants_close_up ? close_up_side(frame, bench.unit) : 0.0f;
+  const bool covered = floor.band != band - frame.y || floor.beside != beside;
   floor.band = band - frame.y;
+  floor.beside = beside;
   if ((resized || covered) && !floor.moved_by_hand) fit_floor(floor, desk);
   follow_drives(floor, desk);
   ImGui::SetCursorScreenPos({frame.x, band});
@@ -258,8 +260,7 @@ void show_floor(FloorView& floor, panel::Desk& desk) {
   move_view(bench);
   const double grid = draw_floor(bench);
   work(bench);
-  const bool close_up = floor.close_up && desk.tool == panel::Tool::look && panel::has_drive(desk);
-  if (close_up) draw_close_up(bench, options + 8 * bench.unit);
+  if (wants_close_up && panel::has_drive(desk)) draw_close_up(bench, options + 8 * bench.unit);
   draw.AddRectFilled({frame.x, frame.y}, {frame.x + frame.width, band},
                      panel::faded(bench.theme.surface, 0.92f));
   draw_footer(bench, grid, hint_of(bench));

@@ -53,7 +53,8 @@ struct FloorView {
   bool moved_by_hand = false;
   bool own_edit = false;  // the course on its way to the screen was changed on the floor itself
   bool close_up = true;
-  float band = 0;  // px: how much of the frame's upper edge the tool's settings cover
+  float band = 0;    // px: how much of the frame's upper edge the tool's settings cover
+  float beside = 0;  // px: how much of its right edge is kept free for the close-up
   Held held;
   std::string refusal;                                     // why the last movement changed nothing
   double length_mm = 400, radius_mm = 250, turn_deg = 90;  // of the next piece

@@ -209,12 +209,14 @@ void offer_shape(Flow& flow) {
   flow.space();
   offer_closing(flow);
   offer_width(flow);
+  if (word_button(flow, "As points", bench.in_step())) {
+    if (edit_at_once(bench, with_points_from_pieces(bench.desk.scenario, bench.line())))
+      bench.desk.selection = {};
+    return;
+  }
   flow.next_line();
   if (bench.desk.selection.piece >= 0) return offer_piece(flow);
   offer_measures(flow);
-  flow.space();
-  if (word_button(flow, "Turn into points", bench.in_step()))
-    edit_at_once(bench, with_points_from_pieces(bench.desk.scenario, bench.line()));
 }
 
 void offer_gaps(Flow& flow) {
