@@ -1,0 +1,83 @@
+"""Holds `linewright drive --json` against reference_drive.py, drive by drive.
+
+    reference_check.py LINEWRIGHT [--quick] [--scenarios FOLDER] [NAME ...]
+
+One line a case. Cases are the files of FOLDER, their random keys set to 0, and the variations of reference_cases.py.
+Outcome and sliding have to be equal; time within 1 % or two loops; progress within 1 %; deviation (rms, largest) within
+1 % or 0.05 mm, its mean within 1 % of the rms or 0.05 mm; mean error within 1 % or 0.0005 of full scale (bar: 0.02 mm).
+--quick runs the cases marked for it. With NAMEs only the cases that contain one of them run. Ends with 1 when one fails.
+"""
+import argparse
+import json
+import subprocess
+import sys
+import time
+from pathlib import Path
+
+import reference_cases
+import reference_drive
+
+RANDOM = ["sensors.noise_pct=0.0", "floor.texture_pct=0.0", "loop.jitter_pct=0.0"]
+
+
+def engine(binary, text):
+    command = [binary, "drive", "--json", "-"] + [word for key in RANDOM for word in ("--set", key)]
+    run = subprocess.run(command, input=text, capture_output=True, text=True, check=False)
+    if run.returncode != 0:
+        raise SystemExit(f"{binary} refused:\n{run.stderr}\n{text}")
+    return json.loads(run.stdout)
+
+
+def disagreements(scenario, ours, theirs):
+    """Texts that name each figure out of bounds."""
+    bar = scenario["sensors"]["scheme"] == "bar"
+    rms = abs(theirs["deviation_rms_mm"])
+    bounds = {
+        "time_s": (0.01 * theirs["time_s"], 2 * scenario["loop"]["period_ms"] / 1000),
+        "progress_mm": (0.01 * theirs["progress_mm"], 0.05),
+        "deviation_rms_mm": (0.01 * rms, 0.05),
+        "deviation_max_mm": (0.01 * theirs["deviation_max_mm"], 0.05),
+        "deviation_mean_mm": (0.01 * rms, 0.05),
+        "error_mean": (0.01 * abs(theirs["error_mean"]), 0.02 if bar else 0.0005),
+    }
+    wrong = [f"{key} {ours[key]} not {theirs[key]}" for key in ("outcome", "slid") if ours[key] != theirs[key]]
+    for key, bound in bounds.items():
+        if not abs(ours[key] - theirs[key]) <= max(bound) + 1e-9:
+            wrong.append(f"{key} {ours[key]:.6g} not {theirs[key]:.6g}")
+    return wrong
+
+
+def cases(folder, quick):
+    if folder and not quick:
+        for file in sorted(Path(folder).glob("*.toml")):
+            yield file.stem, file.read_text(encoding="utf-8")
+    for name, in_quick, text in reference_cases.all_cases():
+        if in_quick or not quick:
+            yield name, text
+
+
+def main():
+    arguments = argparse.ArgumentParser()
+    arguments.add_argument("linewright")
+    arguments.add_argument("--quick", action="store_true")
+    arguments.add_argument("--scenarios")
+    arguments.add_argument("names", nargs="*")
+    given = arguments.parse_args()
+    ran = failed = 0
+    for name, text in cases(given.scenarios, given.quick):
+        if given.names and not any(part in name for part in given.names):
+            continue
+        scenario = reference_drive.load(text, RANDOM)
+        begin = time.monotonic()
+        theirs = reference_drive.drive(scenario)
+        wrong = disagreements(scenario, engine(given.linewright, text), theirs)
+        ran, failed = ran + 1, failed + bool(wrong)
+        figures = f"{theirs['outcome']} {theirs['time_s']:.3f} s rms {theirs['deviation_rms_mm']:.4g} mm"
+        print(f"{'FAIL' if wrong else 'ok  '} {name}: {figures}, worked out in {time.monotonic() - begin:.1f} s"
+              + "".join(f"\n       {line}" for line in wrong), flush=True)
+    print(f"{ran} drives, {failed} disagree")
+    sys.exit(1 if failed or ran == 0 else 0)
+
+
+if __name__ == "__main__":
+    main()
