@@ -5,6 +5,9 @@
 One line a case. Cases are the files of FOLDER, their random keys set to 0, and the variations of reference_cases.py.
 Outcome and sliding have to be equal; time within 1 % or two loops; progress within 1 %; deviation (rms, largest) within
 1 % or 0.05 mm, its mean within 1 % of the rms or 0.05 mm; mean error within 1 % or 0.0005 of full scale (bar: 0.02 mm).
+A drive out of bounds is judged once more where the figures of the reference themselves hang on nothing: started 0.01 to
+0.05 mm aside. Rounding, dead bands and growing oscillations make some drives so; then each figure has to lie within
+what these starts give, and the line says "ok~".
 --quick runs the cases marked for it. With NAMEs only the cases that contain one of them run. Ends with 1 when one fails.
 """
 import argparse
@@ -28,8 +31,18 @@ def engine(binary, text):
     return json.loads(run.stdout)
 
 
-def disagreements(scenario, ours, theirs):
-    """Texts that name each figure out of bounds."""
+def from_aside(scenario):
+    """The reference's figures from starts a hair beside the scenario's."""
+    drives = []
+    for aside in (-0.05, -0.03, -0.01, 0.01, 0.03, 0.05):
+        moved = {**scenario, "drive": {**scenario["drive"]}}
+        moved["drive"]["start_offset_mm"] += aside
+        drives.append(reference_drive.drive(moved))
+    return drives
+
+
+def disagreements(scenario, ours, theirs, others=()):
+    """Texts that name each figure out of bounds; the bounds reach about all of theirs and the others'."""
     bar = scenario["sensors"]["scheme"] == "bar"
     rms = abs(theirs["deviation_rms_mm"])
     bounds = {
@@ -42,7 +55,8 @@ def disagreements(scenario, ours, theirs):
     }
     wrong = [f"{key} {ours[key]} not {theirs[key]}" for key in ("outcome", "slid") if ours[key] != theirs[key]]
     for key, bound in bounds.items():
-        if not abs(ours[key] - theirs[key]) <= max(bound) + 1e-9:
+        figures = [drive[key] for drive in (theirs, *others)]
+        if not min(figures) - max(bound) - 1e-9 <= ours[key] <= max(figures) + max(bound) + 1e-9:
             wrong.append(f"{key} {ours[key]:.6g} not {theirs[key]:.6g}")
     return wrong
 
@@ -70,10 +84,13 @@ def main():
         scenario = reference_drive.load(text, RANDOM)
         begin = time.monotonic()
         theirs = reference_drive.drive(scenario)
-        wrong = disagreements(scenario, engine(given.linewright, text), theirs)
+        ours = engine(given.linewright, text)
+        wrong, verdict = disagreements(scenario, ours, theirs), "ok  "
+        if wrong and ours["outcome"] == theirs["outcome"]:
+            wrong, verdict = disagreements(scenario, ours, theirs, from_aside(scenario)), "ok~ "
         ran, failed = ran + 1, failed + bool(wrong)
         figures = f"{theirs['outcome']} {theirs['time_s']:.3f} s rms {theirs['deviation_rms_mm']:.4g} mm"
-        print(f"{'FAIL' if wrong else 'ok  '} {name}: {figures}, worked out in {time.monotonic() - begin:.1f} s"
+        print(f"{'FAIL' if wrong else verdict} {name}: {figures}, worked out in {time.monotonic() - begin:.1f} s"
               + "".join(f"\n       {line}" for line in wrong), flush=True)
     print(f"{ran} drives, {failed} disagree")
     sys.exit(1 if failed or ran == 0 else 0)

@@ -33,7 +33,7 @@ DEFAULTS = {
 }
 GRAVITY = 9806.65                # mm/s^2
 SAME_TIME = 1e-9                 # s; instants closer than this are one instant
-SEEN = 0.1                       # least darkness at which a sensor of a bar is taken to see the line
+SEEN = 0.2                       # least darkness at which a sensor of a bar sees the line (engine/vehicle/sensors.h)
 NODES, WEIGHTS = np.polynomial.legendre.leggauss(5)
 NODES, WEIGHTS = (NODES + 1) / 2, WEIGHTS / 2
 
@@ -218,7 +218,7 @@ def strip_under(spot, lateral, half_width, curvature):
 
 
 def disc_points(rings):
-    """Middles of cells of equal area in the disc of radius 1 (6 rings: 109 cells; n rings: 1 + 3 n (n+1) - 3 n...)."""
+    """Middles of cells of equal area in the disc of radius 1: one in the middle, then 6, 12, 18 ... around it."""
     points = [0j]
     for ring in range(1, rings):
         count = 6 * ring
@@ -290,7 +290,8 @@ class Tracker:
         for lap, index in self.near(progress):
             chunk = self.chunks[index]
             t, seen = locate(chunk, place)
-            if best is None or abs(seen) < best[0] - 1e-9:
+            tie = best is not None and abs(abs(seen) - best[0]) <= 1e-9    # outside a corner: both its legs
+            if best is None or abs(seen) < best[0] - 1e-9 or (tie and abs(seen.imag) > abs(best[2])):
                 at_end = not self.closed and ((index == 0 and t == 0) or
                                               (index == len(self.chunks) - 1 and t == chunk.length))
                 size = abs(seen.imag) if at_end else abs(seen)
@@ -454,10 +455,10 @@ def drive(scenario, trace=None):
         if trace is not None:
             trace.append((now, vehicle.place.real, vehicle.place.imag, math.degrees(vehicle.heading), progress, deviation,
                           error, controller.i, controller.d, controller.steer, left, right, *sensors.shown))
-        if progress >= goal - 1e-9:
-            outcome = "finished"
-        elif abs(deviation) > run["lost_mm"]:
+        if abs(deviation) > run["lost_mm"]:
             outcome = "line_lost"
+        elif progress >= goal - 1e-9:
+            outcome = "finished"
         else:
             outcome = "time_out" if now >= run["time_limit_s"] - SAME_TIME else None
         if outcome:
