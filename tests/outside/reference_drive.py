@@ -2,9 +2,10 @@
 
     reference_drive.py SCENARIO.toml [KEY=VALUE ...]        prints one JSON object
 
-Nothing here is shared with the engine: the floor is no raster (the share of line under a spot is an area in closed form
-on straights and arcs, and a quadrature over the disc elsewhere), points of the plane are complex numbers, drawn courses
-come from SciPy's CubicSpline. Lengths are in mm, times in s, angles in rad, commands and readings as fractions.
+Nothing here is shared with the engine: the floor is no raster (the share of line under a spot is an area in
+closed form on straights and arcs, and a quadrature over the disc elsewhere), points of the plane are complex
+numbers, drawn courses come from SciPy's CubicSpline. Lengths are in mm, times in s, angles in rad, commands
+and readings as fractions.
 Noise, texture and jitter are random and therefore left out: a scenario that asks for them is refused.
 """
 import cmath
@@ -18,30 +19,31 @@ import numpy as np
 
 DEFAULTS = {
     "vehicle": dict(track_width_mm=140.0, wheel_left_mm=60.0, wheel_right_mm=60.0, top_speed_rpm=220.0,
-                    supply_pct=100.0, forward_time_constant_ms=80.0, turn_time_constant_ms=60.0, dead_band_pct=0.0,
-                    command_step_pct=1.0, command_delay_ms=0.0, grip=0.0),
+                    supply_pct=100.0, forward_time_constant_ms=80.0, turn_time_constant_ms=60.0,
+                    dead_band_pct=0.0, command_step_pct=1.0, command_delay_ms=0.0, grip=0.0),
     "loop": dict(period_ms=5.5, jitter_pct=0.0),
     "sensors": dict(scheme="pair", forward_mm=70.0, lateral_mm=[10.0, -10.0], spot_mm=8.0, black_pct=10.0,
-                    white_pct=90.0, noise_pct=0.0, step_pct=1.0, gain=[], offset_pct=[], refresh_ms=0.0, lag_ms=0.0,
-                    edge="left", target_pct=50.0),
+                    white_pct=90.0, noise_pct=0.0, step_pct=1.0, gain=[], offset_pct=[], refresh_ms=0.0,
+                    lag_ms=0.0, edge="left", target_pct=50.0),
     "controller": dict(base_pct=40.0, kp=0.3, ki=0.0, kd=0.0, gains="per_loop", derivative_filter_ms=0.0,
                        integral_limit_pct=100.0, steer_limit_pct=100.0, ease=0.0),
     "course": dict(line_mm=20.0, closed=True, start_mm=[0.0, 0.0], heading_deg=0.0, pieces=[], points_mm=[],
                    corners=[], gaps_mm=[]),
     "floor": dict(texture_pct=0.0, texture_mm=80.0, light_pct_per_m=[0.0, 0.0], seed=1),
-    "drive": dict(laps=1, time_limit_s=60.0, lost_mm=60.0, start_offset_mm=0.0, start_heading_deg=0.0, seed=1),
+    "drive": dict(laps=1, time_limit_s=60.0, lost_mm=60.0, start_offset_mm=0.0, start_heading_deg=0.0,
+                  seed=1),
 }
 GRAVITY = 9806.65                # mm/s^2
 SAME_TIME = 1e-9                 # s; instants closer than this are one instant
-SEEN = 0.2                       # least darkness at which a sensor of a bar sees the line (engine/vehicle/sensors.h)
+SEEN = 0.2                       # least darkness at which a sensor of a bar sees the line
 NODES, WEIGHTS = np.polynomial.legendre.leggauss(5)
 NODES, WEIGHTS = (NODES + 1) / 2, WEIGHTS / 2
 
 
-# ---- scenario ------------------------------------------------------------------------------------------------------
+# ---- scenario ------------------------------------------------------------------------------------
 
 def load(text, overrides=()):
-    """The scenario as nested dictionaries, defaults filled in; overrides are "table.key=value" with a TOML value."""
+    """The scenario as nested dictionaries, defaults filled in; overrides are "table.key=value" in TOML."""
     given = tomllib.loads(text)
     scenario = {table: {**keys, **given.get(table, {})} for table, keys in DEFAULTS.items()}
     for override in overrides:
@@ -56,11 +58,11 @@ def load(text, overrides=()):
     return scenario
 
 
-# ---- course --------------------------------------------------------------------------------------------------------
+# ---- course --------------------------------------------------------------------------------------
 
 @dataclass
 class Piece:
-    """A straight (curvature 0) or arc. A cut end is square, as tape is; another end is round, which fills corners."""
+    """A straight (curvature 0) or arc. Cut ends are square, as tape is; others round, to fill corners."""
     start: complex
     heading: float
     curvature: float             # 1/mm, left positive
@@ -71,7 +73,8 @@ class Piece:
 
     def local(self, t):
         """The point at t along the piece, seen from its start along its heading."""
-        return t + 0j if self.curvature == 0 else (cmath.exp(1j * self.curvature * t) - 1) / (1j * self.curvature)
+        turn = 1j * self.curvature
+        return t + 0j if turn == 0 else (cmath.exp(turn * t) - 1) / turn
 
     def point(self, t):
         return self.start + self.local(t) * cmath.exp(1j * self.heading)
@@ -84,14 +87,14 @@ class Piece:
 def locate(piece, point):
     """Nearest place t on the piece, and the point seen from there: real ahead, imaginary to the left.
 
-    Works for one complex number and for an array of them. Off the piece's ends only has the result a real part.
+    Works for one complex number and for an array of them. Only off the piece's ends has it a real part.
     """
     k, half = piece.curvature, piece.length / 2
     seen = (point - piece.start) * cmath.exp(-1j * piece.heading)
     if k == 0:
         t = np.clip(seen.real, 0.0, piece.length)
         return t, seen - t
-    turned = (1 + 1j * k * seen) * cmath.exp(-1j * k * half)     # from the centre, 0 rad at the middle of the arc
+    turned = (1 + 1j * k * seen) * cmath.exp(-1j * k * half)  # from the centre, 0 rad at the arc's middle
     t = np.clip(half + np.arctan2(turned.imag, turned.real) / k, 0.0, piece.length)
     turn = np.exp(1j * k * t)
     return t, (seen - (turn - 1) / (1j * k)) / turn
@@ -127,13 +130,14 @@ def arc_through(a, middle, b):
 
 
 def drawn_section(knots, periodic):
-    """Arcs of about 10 mm along a cubic spline over chord length; one list of pieces between each two knots."""
+    """Arcs of about 5 mm along a cubic spline over chord length; a list of pieces from knot to knot."""
     from scipy.interpolate import CubicSpline
     at = np.concatenate([[0.0], np.cumsum(np.abs(np.diff(knots)))])
-    spline = CubicSpline(at, np.array([knots.real, knots.imag]), axis=1, bc_type="periodic" if periodic else "natural")
+    ends = "periodic" if periodic else "natural"
+    spline = CubicSpline(at, np.array([knots.real, knots.imag]), axis=1, bc_type=ends)
     sections = []
     for begin, end in zip(at, at[1:]):
-        steps = 2 * max(1, round((end - begin) / 10.0))
+        steps = 2 * max(1, round((end - begin) / 5.0))
         x, y = spline(np.linspace(begin, end, steps + 1))
         z = [complex(*p) for p in zip(x, y)]
         sections.append([arc_through(*z[i:i + 3]) for i in range(0, steps, 2)])
@@ -141,7 +145,7 @@ def drawn_section(knots, periodic):
 
 
 def drawn(course):
-    """The pieces of a course of drawn points. The points are places of the floor; start and heading do not move them."""
+    """The pieces of a course of drawn points: places of the floor, which start and heading do not move."""
     points = [complex(*p) for p in course["points_mm"]]
     closed, count = course["closed"], len(course["points_mm"])
     sharp = sorted(set(course["corners"]))
@@ -188,7 +192,7 @@ def inked(pieces, gaps, closed):
     return ink
 
 
-# ---- floor ---------------------------------------------------------------------------------------------------------
+# ---- floor ---------------------------------------------------------------------------------------
 
 def half_disc(x):
     """Share of a disc of radius 1 that lies below x."""
@@ -218,7 +222,7 @@ def strip_under(spot, lateral, half_width, curvature):
 
 
 def disc_points(rings):
-    """Middles of cells of equal area in the disc of radius 1: one in the middle, then 6, 12, 18 ... around it."""
+    """Middles of cells of equal area in a disc of radius 1: one, and 6, 12, 18 ... around it."""
     points = [0j]
     for ring in range(1, rings):
         count = 6 * ring
@@ -263,7 +267,7 @@ class Floor:
         return float(np.mean(np.clip(0.5 - outside / cell, 0.0, 1.0)))
 
 
-# ---- progress ------------------------------------------------------------------------------------------------------
+# ---- progress ------------------------------------------------------------------------------------
 
 class Tracker:
     """Progress of the guide point: nearest place of the centreline within a window about the last one."""
@@ -273,14 +277,15 @@ class Tracker:
         for piece in pieces:
             count = max(1, math.ceil(piece.length / 40.0))
             for i in range(count):
-                self.chunks.append(piece.part(piece.length * i / count, piece.length * (i + 1) / count, False, False))
+                begin, end = piece.length * i / count, piece.length * (i + 1) / count
+                self.chunks.append(piece.part(begin, end, False, False))
         self.ends = np.array([[c.station, c.station + c.length] for c in self.chunks])
 
     def near(self, progress):
         """The chunks in the window, each with how often the whole length is to be added."""
         laps = math.floor(progress / self.length) if self.closed else 0
         for lap in (laps - 1, laps, laps + 1) if self.closed else (0,):
-            low, high = progress - self.window - lap * self.length, progress + self.window - lap * self.length
+            low, high = (progress + side * self.window - lap * self.length for side in (-1, 1))
             for index in np.nonzero((self.ends[:, 1] >= low) & (self.ends[:, 0] <= high))[0]:
                 yield lap, index
 
@@ -291,21 +296,24 @@ class Tracker:
             chunk = self.chunks[index]
             t, seen = locate(chunk, place)
             tie = best is not None and abs(abs(seen) - best[0]) <= 1e-9    # outside a corner: both its legs
-            if best is None or abs(seen) < best[0] - 1e-9 or (tie and abs(seen.imag) > abs(best[2])):
+            if best is None or abs(seen) < best[0] - 1e-9 or (tie and abs(seen.imag) > best[3]):
                 at_end = not self.closed and ((index == 0 and t == 0) or
                                               (index == len(self.chunks) - 1 and t == chunk.length))
                 size = abs(seen.imag) if at_end else abs(seen)
-                best = abs(seen), lap * self.length + chunk.station + float(t), math.copysign(size, seen.imag)
+                station = lap * self.length + chunk.station + float(t)
+                best = abs(seen), station, math.copysign(size, seen.imag), abs(seen.imag)
         return best[1], best[2]
 
 
-# ---- vehicle -------------------------------------------------------------------------------------------------------
+# ---- vehicle -------------------------------------------------------------------------------------
 
 class Vehicle:
     def __init__(self, keys, place, heading):
-        self.track, self.left, self.right = keys["track_width_mm"], keys["wheel_left_mm"] / 2, keys["wheel_right_mm"] / 2
+        self.track = keys["track_width_mm"]
+        self.left, self.right = keys["wheel_left_mm"] / 2, keys["wheel_right_mm"] / 2
         self.full = keys["top_speed_rpm"] * 2 * math.pi / 60 * keys["supply_pct"] / 100
-        self.forward_lag, self.turn_lag = keys["forward_time_constant_ms"] / 1000, keys["turn_time_constant_ms"] / 1000
+        self.forward_lag = keys["forward_time_constant_ms"] / 1000
+        self.turn_lag = keys["turn_time_constant_ms"] / 1000
         self.dead, self.step = keys["dead_band_pct"] / 100, keys["command_step_pct"] / 100
         self.grip = keys["grip"] * GRAVITY
         self.place, self.heading, self.mean, self.half, self.slid = place, heading, 0.0, 0.0, False
@@ -355,7 +363,7 @@ class Vehicle:
         self.half = lagged(self.half, self.goal_half, self.turn_lag, time)[0]
 
 
-# ---- sensors -------------------------------------------------------------------------------------------------------
+# ---- sensors -------------------------------------------------------------------------------------
 
 class Sensors:
     def __init__(self, keys, light, floor, period):
@@ -366,14 +374,16 @@ class Sensors:
         self.smooth, self.shown, self.next_refresh, self.side = None, None, 0.0, 0.0
 
     def read(self, vehicle, time):
-        """The readings at `time`. Light and low-pass act all the time; the readings change only when refreshed."""
+        """Light and low-pass act all the time; the readings change only when refreshed."""
         ahead, raw = cmath.exp(1j * vehicle.heading), []
         for lateral, gain, offset in zip(self.keys["lateral_mm"], self.gain, self.offset):
             place = vehicle.place + complex(self.keys["forward_mm"], lateral) * ahead
-            value = self.black + gain * (self.white - self.black) * self.floor.brightness(place) + offset / 100
+            contrast = gain * (self.white - self.black)
+            value = self.black + contrast * self.floor.brightness(place) + offset / 100
             raw.append(value + self.light.real * place.real + self.light.imag * place.imag)
         raw, lag = np.array(raw), self.keys["lag_ms"] / 1000
-        self.smooth = raw if self.smooth is None else self.smooth + self.period / (lag + self.period) * (raw - self.smooth)
+        before = raw if self.smooth is None else self.smooth
+        self.smooth = before + self.period / (lag + self.period) * (raw - before)
         if time >= self.next_refresh - SAME_TIME:
             step = self.keys["step_pct"] / 100
             self.shown = np.clip(np.rint(self.smooth / step) * step if step > 0 else self.smooth, 0.0, 1.0)
@@ -398,7 +408,7 @@ class Sensors:
         return centroid
 
 
-# ---- controller ----------------------------------------------------------------------------------------------------
+# ---- controller ----------------------------------------------------------------------------------
 
 class Controller:
     def __init__(self, keys, period, full_error):
@@ -426,7 +436,7 @@ class Controller:
         return base - self.steer, base + self.steer
 
 
-# ---- drive ---------------------------------------------------------------------------------------------------------
+# ---- drive ---------------------------------------------------------------------------------------
 
 def drive(scenario, trace=None):
     """Runs a scenario; returns what `linewright drive --json` calls by the same names."""
@@ -436,7 +446,8 @@ def drive(scenario, trace=None):
     floor = Floor(inked(pieces, course["gaps_mm"], course["closed"]), course["line_mm"], sensing["spot_mm"])
     tracker = Tracker(pieces, length, course["closed"], 2 * run["lost_mm"])
     first = pieces[0]
-    vehicle = Vehicle(scenario["vehicle"], first.start + run["start_offset_mm"] * 1j * cmath.exp(1j * first.heading),
+    beside = run["start_offset_mm"] * 1j * cmath.exp(1j * first.heading)
+    vehicle = Vehicle(scenario["vehicle"], first.start + beside,
                       first.heading + math.radians(run["start_heading_deg"]))
     sensors = Sensors(sensing, scenario["floor"]["light_pct_per_m"], floor, period)
     full_error = max(map(abs, sensing["lateral_mm"])) if sensing["scheme"] == "bar" else 1.0
@@ -446,15 +457,17 @@ def drive(scenario, trace=None):
     progress, waiting, deviations, errors, loop = sensing["forward_mm"], [], [], [], 0
     while True:
         now = loop * period
-        progress, deviation = tracker.follow(progress, vehicle.place + sensing["forward_mm"] * cmath.exp(1j * vehicle.heading))
+        guide_point = vehicle.place + sensing["forward_mm"] * cmath.exp(1j * vehicle.heading)
+        progress, deviation = tracker.follow(progress, guide_point)
         error = float(sensors.error(sensors.read(vehicle, now)))
         left, right = (vehicle.rounded(c) for c in controller.step(error))
         waiting.append((now + delay, left, right))
         deviations.append(deviation)
         errors.append(error)
         if trace is not None:
-            trace.append((now, vehicle.place.real, vehicle.place.imag, math.degrees(vehicle.heading), progress, deviation,
-                          error, controller.i, controller.d, controller.steer, left, right, *sensors.shown))
+            trace.append((now, vehicle.place.real, vehicle.place.imag, math.degrees(vehicle.heading),
+                          progress, deviation, error, controller.i, controller.d, controller.steer,
+                          left, right, *sensors.shown))
         if abs(deviation) > run["lost_mm"]:
             outcome = "line_lost"
         elif progress >= goal - 1e-9:
@@ -472,7 +485,8 @@ def drive(scenario, trace=None):
             now = until
     deviations = np.array(deviations)
     return {"outcome": outcome, "time_s": loop * period, "progress_mm": progress,
-            "deviation_mean_mm": float(deviations.mean()), "deviation_rms_mm": float(np.sqrt(np.mean(deviations ** 2))),
+            "deviation_mean_mm": float(deviations.mean()),
+            "deviation_rms_mm": float(np.sqrt(np.mean(deviations ** 2))),
             "deviation_max_mm": float(np.max(np.abs(deviations))), "error_mean": float(np.mean(errors)),
             "slid": vehicle.slid}
 
