@@ -22,6 +22,8 @@ import sys
 import time
 from pathlib import Path
 
+sys.dont_write_bytecode = True  # the source tree stays as it is
+
 import reference_cases
 import reference_drive
 
