@@ -4,6 +4,7 @@
 #include <cmath>
 
 #include "engine/course/angles.h"
+#include "engine/course/sampling.h"
 
 namespace lw {
 namespace {
@@ -34,7 +35,7 @@ double corner_after(const Centreline& line, std::size_t i) {
   const double lap = static_cast<double>(i / n) * line.length;
   for (const double s : line.corners) {
     // A corner on a sample belongs before it; one at the start of a closed course belongs to its end.
-    const double before = std::ceil(s / line.pitch - 1e-6) - 1.0;
+    const double before = std::ceil(s / line.pitch - on_sample) - 1.0;
     const double index = static_cast<double>(i % n);
     if (before == index) return lap + s;
     if (before < 0.0 && i % n == n - 1) return lap + line.length;

@@ -138,7 +138,7 @@ void sample(const Laid& laid, Centreline& line) {
   std::size_t k = 0;
   for (std::size_t i = 0; i < line.nodes.size(); ++i) {
     const double s = static_cast<double>(i) * line.pitch;
-    while (k + 1 < laid.spans.size() && laid.spans[k + 1].from <= s) ++k;
+    while (k + 1 < laid.spans.size() && laid.spans[k + 1].from <= s + on_sample * line.pitch) ++k;
     const Place place = place_on(laid.spans[k], s - laid.spans[k].from);
     Node& node = line.nodes[i];
     node.x = place.at.x;

@@ -107,7 +107,7 @@ std::vector<std::size_t> sample(const std::vector<Cubic>& cubics, const std::vec
   double t = 0.0, s_before = 0.0;
   for (std::size_t i = 0; i < line.nodes.size(); ++i) {
     const double s = static_cast<double>(i) * line.pitch;
-    for (; k + 1 < cubics.size() && starts[k + 1] <= s; ++k) {
+    for (; k + 1 < cubics.size() && starts[k + 1] <= s + on_sample * line.pitch; ++k) {
       t = 0.0;
       s_before = starts[k + 1];
     }
@@ -121,7 +121,7 @@ std::vector<std::size_t> sample(const std::vector<Cubic>& cubics, const std::vec
 
 /// Whether a corner lies after sample i, before or on the next.
 bool corner_follows(const Centreline& line, std::size_t i) {
-  const double s = static_cast<double>(i) * line.pitch;
+  const double s = (static_cast<double>(i) + on_sample) * line.pitch;
   const bool last = i + 1 == line.nodes.size();
   return std::any_of(line.corners.begin(), line.corners.end(), [&](double corner) {
     return (corner > s && corner <= s + line.pitch) || (last && corner == 0.0);

@@ -13,6 +13,7 @@ inline constexpr double nodes_most = 200000.0;       // longer courses are sampl
 inline constexpr double course_length_most = 1e3;    // m; the pitch is then 5 mm
 inline constexpr double course_length_least = 0.01;  // m
 inline constexpr double radius_least = 1e-3;         // m; also never below the pitch
+inline constexpr double on_sample = 1e-6;            // samples; a joint this near to one lies on it
 
 /// Length, pitch and an empty node for every sample. Errors: too short, too long.
 Result<Centreline> blank_centreline(double length, bool closed);

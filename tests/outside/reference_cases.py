@@ -150,7 +150,7 @@ CASES = [
         "controller": {"base_pct": 20.0, "kp": 0.02, "ease": 0.8},
         "course": open_course(SQUARE),
     }),
-    ("pair round blunt corners", False, {
+    ("pair round blunt corners", True, {
         "controller": {"base_pct": 25.0, "kp": 0.5},
         "course": open_course([straight(300), corner(35), straight(300), corner(-50), straight(300)]),
     }),

@@ -57,6 +57,22 @@ TEST_CASE("Courses heading by quarters close to the last bits") {
   }
 }
 
+TEST_CASE("A corner on a sample turns there, though rounding puts the sample a hair before it") {
+  const Result<Centreline> line = make_centreline(
+      course_of({straight(300), bend(0, 35), straight(300), bend(0, -50), straight(300)}, false), window);
+  REQUIRE(line.ok());
+  REQUIRE(line->corners.size() == 2);
+  REQUIRE(line->nodes.size() == 901);
+  CHECK(300.0 * line->pitch < line->corners[0]);  // the hair: 300 times 0.9 / 900
+  const auto heading_deg = [&](std::size_t i) {
+    return std::atan2(line->nodes[i].tangent_y, line->nodes[i].tangent_x) * 180.0 / pi;
+  };
+  CHECK(heading_deg(299) == Approx(0.0).margin(1e-9));
+  CHECK(heading_deg(300) == Approx(35.0));
+  CHECK(heading_deg(599) == Approx(35.0));
+  CHECK(heading_deg(600) == Approx(-15.0));
+}
+
 TEST_CASE("A figure-eight turns by nothing in all and closes") {
   const Result<Centreline> line = make_centreline(course_of({bend(200, 360), bend(200, -360)}), window);
   REQUIRE(line.ok());
