@@ -82,9 +82,8 @@ TEST_CASE("each limit holds at its figure and fails just below", "[shell]") {
     INFO(limit);
     const double value = drive[figure].get<double>();
     REQUIRE(value > 0.0);
-    const auto with = [&](double bound) {
-      return linewright("check " + scenario("heavy_cart") + " --set expect." + limit + "=" +
-                        Json(bound).dump())
+    const auto with = [&, key = std::string(limit)](double bound) {  // clang 14 captures no binding itself
+      return linewright("check " + scenario("heavy_cart") + " --set expect." + key + "=" + Json(bound).dump())
           .code;
     };
     CHECK(with(value) == 0);
