@@ -45,4 +45,12 @@ struct LoopCall {
 /// The linear loop on the straight: margins, critical gain, poles.
 Answer loop_command(const LoopCall& call);
 
+struct CeilingCall {
+  Input input;
+  std::vector<std::string> kinds;  // "P", "PI", "PD", "PID"; empty = the scenario's own choice and all four
+  bool retune = false;             // gains afresh for every base, from the critical gain there
+};
+/// The highest base speed that gets round, and what ends it.
+Answer ceiling_command(const CeilingCall& call);
+
 }  // namespace lw::shell

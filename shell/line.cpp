@@ -35,6 +35,7 @@ struct Line {
   DescribeCall describe;
   LinkCall link;
   LoopCall loop;
+  CeilingCall ceiling;
 };
 
 CLI::App* add_command(Line& line, const char* name, const char* does, std::function<Answer()> call) {
@@ -57,6 +58,20 @@ void add_input(CLI::App* app, Input& input) {
 
 void add_file(CLI::App* app, const char* option, std::string& path, const char* does) {
   app->add_option(option, path, does)->type_name("FILE");
+}
+
+/// Commands that drive many times, or look at one part alone.
+void add_studies(Line& line) {
+  CLI::App* ceiling = add_command(line, "ceiling", "The highest base speed that gets round, and what ends it",
+                                  [&line] { return ceiling_command(line.ceiling); });
+  add_input(ceiling, line.ceiling.input);
+  ceiling->add_option("--kind", line.ceiling.kinds, "Only these of P, PI, PD, PID, separated by commas")
+      ->delimiter(',')
+      ->allow_extra_args(false)
+      ->type_name("KIND,...");
+  ceiling->add_flag("--retune", line.ceiling.retune,
+                    "Set the gains afresh at every base, from the critical gain");
+  ceiling->footer("Example: linewright ceiling scenarios/hairpins.toml --kind P,PID");
 }
 
 void add_commands(Line& line) {
@@ -96,6 +111,7 @@ void add_commands(Line& line) {
                                [&line] { return loop_command(line.loop); });
   add_input(loop, line.loop.input);
   loop->footer("Example: linewright loop scenarios/straight.toml --set controller.kp=0.5");
+  add_studies(line);
 }
 
 /// The candidate nearest to a wrong word, or nothing when none is near.

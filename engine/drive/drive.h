@@ -36,6 +36,16 @@ struct Summary {
 /// Runs drive number `number` (its noise and jitter draws) of a plan. Fills `trace` when given.
 Summary drive(const Plan& plan, Trace* trace = nullptr, std::uint64_t number = 0);
 
+/// How a line was lost: in parts what reason() says in a sentence.
+struct Loss {
+  double left_at = 0.0;  // m of progress over all laps, where the deviation passed what counts as lost
+  double from = 0.0;     // m of arc length, in [0, length), where the vehicle began to leave
+  std::string why;       // "steer saturated"
+  std::string where;     // "in the 150 mm bend"; empty where the course has no word for it
+};
+/// Needs the trace of a drive that ended as line_lost.
+Loss loss_of(const Plan& plan, const Trace& trace);
+
 /// Why a drive ended as it did, in words for a headline, such as
 /// "leaves the line at 2.31 m: steer saturated in the 150 mm bend". Needs the trace of that drive.
 std::string reason(const Plan& plan, const Summary& summary, const Trace& trace);

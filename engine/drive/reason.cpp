@@ -136,13 +136,10 @@ std::string place_text(const Centreline& line, double progress) {
 }
 
 std::string lost_text(const Plan& plan, const Trace& trace) {
-  const Departure departure = departure_of(plan, trace);
-  const Centreline& line = plan.ground->line;
-  const double entry = place_on(line, trace.rows[departure.first].progress);
-  std::string text = "leaves the line at " + place_text(line, trace.rows.back().progress) + ": " +
-                     loss_reason(plan, departure);
-  const std::string where = section_name(line, entry, 1.5 * plan.rig.task.lost);
-  return where.empty() ? text : text + " " + where;
+  const Loss loss = loss_of(plan, trace);
+  const std::string text =
+      "leaves the line at " + place_text(plan.ground->line, loss.left_at) + ": " + loss.why;
+  return loss.where.empty() ? text : text + " " + loss.where;
 }
 
 std::string time_out_text(const Plan& plan, const Summary& summary, const Trace& trace) {
@@ -158,6 +155,14 @@ std::string time_out_text(const Plan& plan, const Summary& summary, const Trace&
 }
 
 }  // namespace
+
+Loss loss_of(const Plan& plan, const Trace& trace) {
+  const Departure departure = departure_of(plan, trace);
+  const Centreline& line = plan.ground->line;
+  const double entry = place_on(line, trace.rows[departure.first].progress);
+  return {trace.rows.back().progress, entry, loss_reason(plan, departure),
+          section_name(line, entry, 1.5 * plan.rig.task.lost)};
+}
 
 std::string reason(const Plan& plan, const Summary& summary, const Trace& trace) {
   switch (summary.outcome) {
