@@ -3,7 +3,7 @@
 //   BUILD/page-single/linewright.html  one file with everything inside, for opening from disk
 // SOURCES is web/page, BUILD holds the two modules that em++ made, PARTS what web/build/parts fetched.
 import { createHash } from 'node:crypto';
-import { mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { gzipSync } from 'node:zlib';
 
@@ -26,11 +26,17 @@ const policy = (script, styles, connect) =>
   `default-src 'none'; script-src ${script} 'wasm-unsafe-eval'; style-src ${styles}; img-src data:; ` +
   `connect-src ${connect}; worker-src blob:; base-uri 'none'; form-action 'none'`;
 
+// Of the header-only libraries and Emscripten's own, Debian keeps the words beside every package.
+const fromDebian = [['toml++', 'libtomlplusplus-dev'], ['JSON for Modern C++', 'nlohmann-json3-dev'],
+                    ['Eigen', 'libeigen3-dev'], ['Emscripten and its libraries', 'emscripten']]
+  .map(([name, debian]) => [name, `/usr/share/doc/${debian}/copyright`])
+  .map(([name, file]) => [name, existsSync(file) ? readFileSync(file, 'utf8') : 'see the project\'s own pages']);
 const licences = [
   ['Dear ImGui', text(parts, 'imgui/LICENSE.txt')],
   ['SDL', text(parts, 'sdl/LICENSE.txt')],
   ['zlib', text(parts, 'zlib/README').split('Copyright notice:')[1] ?? text(parts, 'zlib/README')],
   ['Inter (typeface)', text(parts, 'typeface/LICENCE')],
+  ...fromDebian,
 ].map(([name, words]) => `${name}\n${'='.repeat(name.length)}\n\n${words.trim()}\n`).join('\n\n');
 
 function fresh(name) {
