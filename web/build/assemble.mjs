@@ -30,7 +30,7 @@ const policy = (script, styles, connect) =>
 const fromDebian = [['toml++', 'libtomlplusplus-dev'], ['JSON for Modern C++', 'nlohmann-json3-dev'],
                     ['Eigen', 'libeigen3-dev'], ['Emscripten and its libraries', 'emscripten']]
   .map(([name, debian]) => [name, `/usr/share/doc/${debian}/copyright`])
-  .map(([name, file]) => [name, existsSync(file) ? readFileSync(file, 'utf8') : 'see the project\'s own pages']);
+  .map(([name, file]) => [name, existsSync(file) ? readFileSync(file, 'utf8') : `see ${file}`]);
 const licences = [
   ['Dear ImGui', text(parts, 'imgui/LICENSE.txt')],
   ['SDL', text(parts, 'sdl/LICENSE.txt')],
