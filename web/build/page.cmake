@@ -22,7 +22,7 @@ add_custom_command(OUTPUT ${library_source}
                            -P ${CMAKE_SOURCE_DIR}/web/build/library.cmake VERBATIM)
 
 file(GLOB page_ui_sources CONFIGURE_DEPENDS web/*.cpp web/panel/*.cpp web/view/*.cpp)
-add_library(page_ui STATIC ${page_ui_sources} web/page/typeface.cpp web/page/items.cpp ${typeface_source}
+add_library(page_ui STATIC ${page_ui_sources} web/page/typeface.cpp web/page/items.cpp web/page/damage.cpp ${typeface_source}
             ${library_source})
 target_link_libraries(page_ui PRIVATE conversion_warnings PUBLIC engine imgui)
 
@@ -33,12 +33,11 @@ endif()
 set(module_options -O2 -sMODULARIZE=1 -sALLOW_MEMORY_GROWTH=1 -sFILESYSTEM=0 -sDYNAMIC_EXECUTION=0
     -sMALLOC=emmalloc -sEXPORTED_FUNCTIONS=_malloc,_free)
 
-add_executable(page web/page/main.cpp web/page/fingers.cpp web/page/host_browser.cpp web/page/gl.cpp
+add_executable(page web/page/main.cpp web/page/fingers.cpp web/page/host_browser.cpp web/page/painter.cpp
                web/page/sdl_absent.c ${imgui_root}/backends/imgui_impl_sdl2.cpp)
 set_source_files_properties(${imgui_root}/backends/imgui_impl_sdl2.cpp PROPERTIES COMPILE_OPTIONS -w)
 target_include_directories(page SYSTEM BEFORE PRIVATE ${sdl_root}/include)
 target_include_directories(page SYSTEM PRIVATE ${imgui_root}/backends)
-target_compile_definitions(page PRIVATE IMGUI_IMPL_OPENGL_ES3)
 target_link_libraries(page PRIVATE conversion_warnings page_ui sdl)
 target_link_options(page PRIVATE ${module_options} -sENVIRONMENT=web -sEXPORT_NAME=linewrightPage
                     -sMIN_WEBGL_VERSION=2 -sMAX_WEBGL_VERSION=2 -sINITIAL_MEMORY=33554432)

@@ -2,11 +2,9 @@
 // functions under extern "C"; the application behind them is web/page_app.h.
 //
 // Nothing runs by itself: page.js calls page_frame() after an event, and again as long as it returns `again`.
-#include <GLES3/gl3.h>
 #include <SDL.h>
 #include <emscripten.h>
 #include <imgui.h>
-#include <imgui_impl_opengl3.h>
 #include <imgui_impl_sdl2.h>
 
 #include <algorithm>
@@ -18,6 +16,7 @@
 #include "web/host.h"
 #include "web/page/fingers.h"
 #include "web/page/items.h"
+#include "web/page/painter.h"
 #include "web/page/typeface.h"
 #include "web/page_app.h"
 
@@ -60,18 +59,16 @@ void set_up_imgui() {
   io.IniFilename = nullptr;
   io.ConfigFlags |= ImGuiConfigFlags_NavEnableKeyboard;
   ImGui_ImplSDL2_InitForOpenGL(page.window, page.context);
-  ImGui_ImplOpenGL3_Init("#version 300 es");
   io.SetClipboardTextFn = set_clipboard;
   io.GetClipboardTextFn = get_clipboard;
 }
 
 void set_type(float ratio, float text_scale) {
   if (ratio == page.ratio && text_scale == page.text_scale) return;
-  if (page.ratio != 0) ImGui_ImplOpenGL3_DestroyFontsTexture();
   page.ratio = ratio;
   page.text_scale = text_scale;
   lw::page::load_typeface(ratio, text_scale);
-  ImGui_ImplOpenGL3_CreateFontsTexture();
+  lw::page::painter_take_typeface();
 }
 
 /// Two fingers are a gesture of their own: the mouse that SDL makes of the first one must not draw meanwhile.
@@ -87,16 +84,6 @@ void take_events() {
     }
     if (!page.fingers.hides(event)) ImGui_ImplSDL2_ProcessEvent(&event);
   }
-}
-
-void draw() {
-  const ImVec2 size = ImGui::GetIO().DisplaySize;
-  const ImVec2 scale = ImGui::GetIO().DisplayFramebufferScale;
-  glViewport(0, 0, static_cast<int>(size.x * scale.x), static_cast<int>(size.y * scale.y));
-  glClearColor(0, 0, 0, 1);
-  glClear(GL_COLOR_BUFFER_BIT);
-  ImGui_ImplOpenGL3_RenderDrawData(ImGui::GetDrawData());
-  SDL_GL_SwapWindow(page.window);
 }
 
 void push_key(SDL_Scancode code, Uint16 modifiers, bool down) {
@@ -117,6 +104,7 @@ extern "C" {
 EMSCRIPTEN_KEEPALIVE bool page_start(float ratio) {
   if (!open_window()) return false;
   set_up_imgui();
+  if (!lw::page::painter_start()) return false;
   set_type(ratio, 1);
   lw::app::start();
   return true;
@@ -127,14 +115,13 @@ EMSCRIPTEN_KEEPALIVE int page_frame(float ratio) {
   set_type(ratio, lw::app::text_scale());
   take_events();
   lw::page::clear_items();
-  ImGui_ImplOpenGL3_NewFrame();
   ImGui_ImplSDL2_NewFrame();
   // A page at rest draws nothing for minutes; what Dear ImGui times should not see that as one long frame.
   ImGui::GetIO().DeltaTime = std::min(ImGui::GetIO().DeltaTime, 0.1f);
   ImGui::NewFrame();
   const bool more = lw::app::frame();
   ImGui::Render();
-  draw();
+  if (lw::page::painter_draw(*ImGui::GetDrawData())) SDL_GL_SwapWindow(page.window);
   return (more ? again : 0) + (ImGui::GetIO().WantTextInput ? text : 0);
 }
 

@@ -343,6 +343,9 @@
       return stop('Linewright draws with WebGL 2, which this browser does not offer here.\n' +
                   'Often it is switched off in the settings (hardware acceleration), or the browser is old.');
     }
+    // What does not change is not drawn again (web/page/damage.h), so it has to stay from frame to frame.
+    const getContext = canvas.getContext.bind(canvas);
+    canvas.getContext = (kind, wishes) => getContext(kind, { ...wishes, preserveDrawingBuffer: true });
     const module = await WebAssembly.compile(await bytesOf('page_module.wasm'));
     page = await linewrightPage({
       canvas,
