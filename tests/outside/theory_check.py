@@ -216,5 +216,6 @@ def check(path):
     return worst
 
 
-worst = max(check(path) for path in sys.argv[1:])
-print(f"ok {len(sys.argv) - 1} loops, largest relative difference {worst:.2g}")
+if __name__ == "__main__":
+    worst = max(check(path) for path in sys.argv[1:])
+    print(f"ok {len(sys.argv) - 1} loops, largest relative difference {worst:.2g}")
