@@ -53,4 +53,11 @@ struct CeilingCall {
 /// The highest base speed that gets round, and what ends it.
 Answer ceiling_command(const CeilingCall& call);
 
+struct TermsCall {
+  Input input;
+};
+/// Whether I and D earn their place: what P alone keeps in each bend, what I removes and costs, whether D
+/// pays.
+Answer terms_command(const TermsCall& call);
+
 }  // namespace lw::shell

@@ -36,6 +36,7 @@ struct Line {
   LinkCall link;
   LoopCall loop;
   CeilingCall ceiling;
+  TermsCall terms;
 };
 
 CLI::App* add_command(Line& line, const char* name, const char* does, std::function<Answer()> call) {
@@ -72,6 +73,11 @@ void add_studies(Line& line) {
   ceiling->add_flag("--retune", line.ceiling.retune,
                     "Set the gains afresh at every base, from the critical gain");
   ceiling->footer("Example: linewright ceiling scenarios/hairpins.toml --kind P,PID");
+
+  CLI::App* terms = add_command(line, "terms", "Whether I and D earn their place on this vehicle and course",
+                                [&line] { return terms_command(line.terms); });
+  add_input(terms, line.terms.input);
+  terms->footer("Example: linewright terms scenarios/s_bends.toml");
 }
 
 void add_commands(Line& line) {

@@ -113,7 +113,10 @@ bool contradicts(const DerivativeCase& found) {
 
 std::string number(double value, int digits) {
   char text[32];
-  std::snprintf(text, sizeof text, "%.*g", digits, value);
+  if (std::fabs(value) >= 1000.0)  // no exponents for people
+    std::snprintf(text, sizeof text, "%.0f", value);
+  else
+    std::snprintf(text, sizeof text, "%.*g", digits, value);
   return text;
 }
 std::string ms(double seconds) { return number(1e3 * seconds, 3) + " ms"; }

@@ -187,7 +187,10 @@ void work_out(const Scenario& scenario, const std::optional<double>& time, BendF
 
 std::string number(double value, int digits) {
   char text[32];
-  std::snprintf(text, sizeof text, "%.*g", digits, value);
+  if (std::fabs(value) >= 1000.0)  // no exponents for people
+    std::snprintf(text, sizeof text, "%.0f", value);
+  else
+    std::snprintf(text, sizeof text, "%.*g", digits, value);
   return text;
 }
 

@@ -103,4 +103,5 @@ def check(path):
 
 
 if __name__ == "__main__":
-    print(f"ok noise: {len(sys.argv) - 1} loops, at most {max(check(path) for path in sys.argv[1:]):.2g} apart")
+    apart = max(check(path) for path in sys.argv[1:])
+    print(f"ok {len(sys.argv) - 1} loops, largest relative difference {apart:.2g}")
