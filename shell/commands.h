@@ -60,4 +60,12 @@ struct TermsCall {
 /// pays.
 Answer terms_command(const TermsCall& call);
 
+struct SignalCall {
+  Input input;
+  std::string segments;  // as read_knots() takes them
+  std::string csv;       // file; empty = CSV on stdout
+};
+/// The controller alone on a test signal, loop by loop, to hold other code against.
+Answer signal_command(const SignalCall& call);
+
 }  // namespace lw::shell

@@ -37,6 +37,7 @@ struct Line {
   LoopCall loop;
   CeilingCall ceiling;
   TermsCall terms;
+  SignalCall signal;
 };
 
 CLI::App* add_command(Line& line, const char* name, const char* does, std::function<Answer()> call) {
@@ -78,6 +79,20 @@ void add_studies(Line& line) {
                                 [&line] { return terms_command(line.terms); });
   add_input(terms, line.terms.input);
   terms->footer("Example: linewright terms scenarios/s_bends.toml");
+
+  CLI::App* signal =
+      add_command(line, "signal", "The controller alone on a test signal, to hold your code against",
+                  [&line] { return signal_command(line.signal); });
+  add_input(signal, line.signal.input);
+  signal
+      ->add_option("--segments", line.signal.segments,
+                   "LEVEL@SECONDS,...: levels of the error, each reached in so long")
+      ->type_name("LIST")
+      ->required();
+  add_file(signal, "--csv", line.signal.csv, "Write the CSV here rather than to stdout");
+  signal->footer(
+      "A hold repeats a level, a step takes 0 s. Example: linewright signal scenarios/oval.toml\n"
+      "--segments \"0@0.1, 0.2@0, 0.2@0.5, -0.1@1\"");
 }
 
 void add_commands(Line& line) {
