@@ -60,6 +60,18 @@ struct TermsCall {
 /// pays.
 Answer terms_command(const TermsCall& call);
 
+struct SearchCall {
+  Input input;
+  std::vector<std::string> free;    // "kp", "base=30:80"
+  std::vector<std::string> limits;  // "deviation_mm=3"
+  std::string goal = "time";        // or "deviation"
+  int evaluations = 600;            // candidates
+  int draws = 3;                    // drives a candidate
+  std::uint64_t seed = 1;           // of the search
+};
+/// Gains, base speed and sensor places by search, within limits.
+Answer search_command(const SearchCall& call);
+
 struct SignalCall {
   Input input;
   std::string segments;  // as read_knots() takes them
