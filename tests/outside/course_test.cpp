@@ -102,7 +102,7 @@ bool agrees(const std::string& python, const std::string& text) {
   return std::system((python + " '" + script + "' '" + name + "'").c_str()) == 0;
 }
 
-TEST_CASE("drawn lines, strips and an ellipse agree with SciPy") {
+TEST_CASE("drawn lines, strips and an ellipse agree with SciPy", "[outside]") {
   const std::string python = python_with_scipy();
   if (python.empty()) {
     WARN("SciPy is missing: courses were not held against it");

@@ -11,7 +11,7 @@
 using namespace lw;
 using namespace lw::test;
 
-TEST_CASE("the pose follows the differential equations as DOP853 integrates them") {
+TEST_CASE("the pose follows the differential equations as DOP853 integrates them", "[outside]") {
   const std::string python = python_with("scipy.integrate, tomllib", "the drive");
   if (python.empty()) return;
   const auto check = [&](const std::string& name, Scenario scenario) {

@@ -34,7 +34,7 @@ bool run(const std::string& call) { return std::system(("python3 '" + script + "
 
 bool python_is_here() { return std::system("python3 -c 'import tomllib, zlib' 2>/dev/null") == 0; }
 
-TEST_CASE("other programs unpack our links and we read theirs") {
+TEST_CASE("other programs unpack our links and we read theirs", "[outside]") {
   if (!python_is_here()) {
     WARN("python3 with tomllib is missing: links were not held against other programs");
     return;

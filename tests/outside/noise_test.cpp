@@ -40,7 +40,7 @@ std::string found_text(const Scenario& scenario, double bend = 1.0) {
 
 }  // namespace
 
-TEST_CASE("noise on steer and deviation is what SciPy's Lyapunov equation gives") {
+TEST_CASE("noise on steer and deviation is what SciPy's Lyapunov equation gives", "[outside]") {
   const std::string python = python_with("scipy.linalg, tomllib", "the noise on the steer");
   if (python.empty()) return;
   const std::vector<Scenario> carts = noisy_carts();

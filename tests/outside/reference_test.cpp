@@ -6,7 +6,7 @@
 
 using namespace lw::test;
 
-TEST_CASE("drives agree with a second implementation of the model") {
+TEST_CASE("drives agree with a second implementation of the model", "[outside]") {
   const std::string python = python_with("numpy, scipy.interpolate, tomllib", "the whole drive");
   if (python.empty()) return;
   const std::string command = "'" LINEWRIGHT_COMMAND "' ";

@@ -51,7 +51,8 @@ std::string found_text(const Scenario& scenario, double bend = 1.0) {
 
 }  // namespace
 
-TEST_CASE("critical gain, margins, sensitivity and poles are those that SciPy finds by another way") {
+TEST_CASE("critical gain, margins, sensitivity and poles are those that SciPy finds by another way",
+          "[outside]") {
   const std::string python = python_with("scipy.signal, tomllib", "the linear loop");
   if (python.empty()) return;
   std::string arguments;
