@@ -1,5 +1,5 @@
-// Same bits in the page: every scenario gives the pinned trace in Chromium, and a link made here runs natively
-// alike.
+// Same bits in the page: every scenario gives the pinned trace in Chromium, and a link made here runs
+// natively alike.
 import { execFileSync } from 'node:child_process';
 import { existsSync, mkdtempSync, readFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
@@ -29,7 +29,8 @@ async function drop(page, name, text) {
 }
 
 // The widget whose hidden name is this; what it shows stands before ##.
-const shown = (items, hidden) => items.find((item) => item.label.endsWith(`##${hidden}`))?.label.split('##')[0];
+const shown = (items, hidden) =>
+  items.find((item) => item.label.endsWith(`##${hidden}`))?.label.split('##')[0];
 
 async function driven(page) {
   const items = await page.items();
@@ -61,7 +62,8 @@ for (const single of [false, true]) {
       try {
         await until(async () => (got = await driven(page)).hash === hash && got.steps === steps, name, 5000);
       } catch {
-        throw new Error(`${name}: pinned ${steps} steps, ${hash}; the page drives ${got.steps}, ${got.hash}: ` +
+        throw new Error(`${name}: pinned ${steps} steps, ${hash}; ` +
+                        `the page drives ${got.steps}, ${got.hash}: ` +
                         await firstDifference(page, name));
       }
     }
@@ -81,5 +83,6 @@ test('a link made in the page runs natively with the same bits', async () => {
   const call = ['drive', '--json', `linewright.html${fragment}`];
   const there = JSON.parse(execFileSync(native, call, { encoding: 'utf8' }));
   expect(there.trace_hash === here.hash && String(there.steps) === here.steps,
-         `the page drives ${here.hash} in ${here.steps} steps, the command line ${there.trace_hash} in ${there.steps}`);
+         `the page drives ${here.hash} in ${here.steps} steps, ` +
+         `the command line ${there.trace_hash} in ${there.steps}`);
 });
