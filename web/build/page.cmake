@@ -22,7 +22,8 @@ add_custom_command(OUTPUT ${library_source}
                            -P ${CMAKE_SOURCE_DIR}/web/build/library.cmake VERBATIM)
 
 file(GLOB page_ui_sources CONFIGURE_DEPENDS web/*.cpp web/panel/*.cpp web/view/*.cpp)
-add_library(page_ui STATIC ${page_ui_sources} web/page/typeface.cpp web/page/items.cpp web/page/damage.cpp ${typeface_source}
+add_library(page_ui STATIC ${page_ui_sources} web/page/typeface.cpp web/page/items.cpp web/page/damage.cpp
+            ${typeface_source}
             ${library_source})
 target_link_libraries(page_ui PRIVATE conversion_warnings PUBLIC engine imgui)
 
