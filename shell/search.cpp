@@ -62,14 +62,27 @@ std::optional<Error> set_limit(const std::string& word, SearchLimits& limits) {
   return Error{"--limit", clipped(word), "NAME=VALUE with one of " + names};
 }
 
+/// "kp,ki" as "kp", "ki".
+std::vector<std::string> apart(const std::vector<std::string>& words) {
+  std::vector<std::string> all;
+  for (const std::string& word : words) {
+    std::size_t from = 0;
+    for (std::size_t comma = 0; comma != std::string::npos; from = comma + 1) {
+      comma = word.find(',', from);
+      all.push_back(word.substr(from, comma == std::string::npos ? comma : comma - from));
+    }
+  }
+  return all;
+}
+
 Result<SearchSettings> settings_of(const SearchCall& call) {
   SearchSettings settings;
-  for (const std::string& word : call.free) {
+  for (const std::string& word : apart(call.free)) {
     const auto free = free_of(word);
     if (!free) return free.error();
     settings.free.push_back(*free);
   }
-  for (const std::string& word : call.limits) {
+  for (const std::string& word : apart(call.limits)) {
     if (const auto error = set_limit(word, settings.limits)) return *error;
   }
   if (call.goal != "time" && call.goal != "deviation")

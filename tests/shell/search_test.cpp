@@ -27,7 +27,8 @@ std::string refusal(const SearchCall& call) {
 
 TEST_CASE("a search answers with gains, evidence and words to drive it by", "[shell]") {
   SearchCall call = call_on("circle_left");
-  call.limits = {"gain_margin_db=6", "deviation_mm=6"};
+  call.free = {"kp,base=20:60"};  // as one word or as several
+  call.limits = {"gain_margin_db=6,deviation_mm=6"};
   const Answer answer = lw::shell::search_command(call);
   REQUIRE(answer.errors.empty());
   CHECK(keys_of(answer.json) == "method kp ki kd filter evidence");
