@@ -45,6 +45,13 @@ struct LoopCall {
 /// The linear loop on the straight: margins, critical gain, poles.
 Answer loop_command(const LoopCall& call);
 
+struct TuneCall {
+  Input input;
+  std::string method = "rules";  // rules | critical | relay | habit
+};
+/// Gains by experiment and rule, each tried.
+Answer tune_command(const TuneCall& call);
+
 struct CeilingCall {
   Input input;
   std::vector<std::string> kinds;  // "P", "PI", "PD", "PID"; empty = the scenario's own choice and all four

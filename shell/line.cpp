@@ -35,6 +35,7 @@ struct Line {
   DescribeCall describe;
   LinkCall link;
   LoopCall loop;
+  TuneCall tune;
   CeilingCall ceiling;
   TermsCall terms;
   SignalCall signal;
@@ -132,6 +133,16 @@ void add_commands(Line& line) {
                                [&line] { return loop_command(line.loop); });
   add_input(loop, line.loop.input);
   loop->footer("Example: linewright loop scenarios/straight.toml --set controller.kp=0.5");
+
+  CLI::App* tune = add_command(line, "tune", "Gains by experiment and rule, each tried: margins and a drive",
+                               [&line] { return tune_command(line.tune); });
+  add_input(tune, line.tune.input);
+  tune->add_option("--method", line.tune.method,
+                   "rules: by theory; critical: by the swing on a straight; relay: by the relay experiment; "
+                   "habit: as on the floor")
+      ->type_name("METHOD")
+      ->capture_default_str();
+  tune->footer("Example: linewright tune scenarios/oval.toml --method critical");
   add_studies(line);
 }
 
