@@ -45,13 +45,6 @@ struct LoopCall {
 /// The linear loop on the straight: margins, critical gain, poles.
 Answer loop_command(const LoopCall& call);
 
-struct TuneCall {
-  Input input;
-  std::string method = "rules";  // rules | critical | relay | habit
-};
-/// Gains by experiment and rule, each tried.
-Answer tune_command(const TuneCall& call);
-
 struct CeilingCall {
   Input input;
   std::vector<std::string> kinds;  // "P", "PI", "PD", "PID"; empty = the scenario's own choice and all four
@@ -78,6 +71,14 @@ struct SearchCall {
 };
 /// Gains, base speed and sensor places by search, within limits.
 Answer search_command(const SearchCall& call);
+
+struct TuneCall {
+  Input input;
+  std::string method = "rules";  // rules | critical | relay | habit | search
+  SearchCall search;             // of the method search; its input is not used
+};
+/// Gains by experiment and rule, each tried; or by search.
+Answer tune_command(const TuneCall& call);
 
 struct SignalCall {
   Input input;

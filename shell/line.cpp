@@ -96,6 +96,32 @@ void add_studies(Line& line) {
       "--segments \"0@0.1, 0.2@0, 0.2@0.5, -0.1@1\"");
 }
 
+void add_tune(Line& line) {
+  CLI::App* tune = add_command(line, "tune", "Gains by experiment, rule or search, each tried",
+                               [&line] { return tune_command(line.tune); });
+  add_input(tune, line.tune.input);
+  tune->add_option("--method", line.tune.method,
+                   "rules: by theory; critical: by the swing on a straight; relay: by the relay experiment; "
+                   "habit: as on the floor; search: the best within limits")
+      ->type_name("METHOD")
+      ->capture_default_str();
+  SearchCall& search = line.tune.search;
+  tune->add_option("--free", search.free, "search: what is varied, such as kp or base=30:80; again for more")
+      ->type_name("NAME[=LOW:HIGH]")
+      ->allow_extra_args(false);
+  tune->add_option("--limit", search.limits,
+                   "search: what has to hold, such as deviation_mm=3; again for more")
+      ->type_name("NAME=VALUE")
+      ->allow_extra_args(false);
+  tune->add_option("--goal", search.goal, "search: time or deviation")
+      ->type_name("GOAL")
+      ->capture_default_str();
+  tune->add_option("--evaluations", search.evaluations, "search: candidates tried")->capture_default_str();
+  tune->add_option("--draws", search.draws, "search: drives a candidate")->capture_default_str();
+  tune->add_option("--seed", search.seed, "search: seed of its draws")->capture_default_str();
+  tune->footer("Example: linewright tune scenarios/oval.toml --method critical");
+}
+
 void add_commands(Line& line) {
   CLI::App* drive = add_command(line, "drive", "One drive: how it went, and why",
                                 [&line] { return drive_command(line.drive); });
@@ -134,15 +160,7 @@ void add_commands(Line& line) {
   add_input(loop, line.loop.input);
   loop->footer("Example: linewright loop scenarios/straight.toml --set controller.kp=0.5");
 
-  CLI::App* tune = add_command(line, "tune", "Gains by experiment and rule, each tried: margins and a drive",
-                               [&line] { return tune_command(line.tune); });
-  add_input(tune, line.tune.input);
-  tune->add_option("--method", line.tune.method,
-                   "rules: by theory; critical: by the swing on a straight; relay: by the relay experiment; "
-                   "habit: as on the floor")
-      ->type_name("METHOD")
-      ->capture_default_str();
-  tune->footer("Example: linewright tune scenarios/oval.toml --method critical");
+  add_tune(line);
   add_studies(line);
 }
 

@@ -143,6 +143,7 @@ Json json_of(const Tuning& tuning, const Scenario& scenario) {
       {"reason", tuning.choice.reason},
       {"critical_gain", tuning.critical_gain > 0.0 ? Json(tuning.critical_gain) : Json(nullptr)},
       {"critical_period_s", tuning.critical_gain > 0.0 ? Json(tuning.critical_period) : Json(nullptr)},
+      {"from", tuning.from},
       {"theory", json_of(tuning.theory)}};
   if (tuning.floor) evidence["experiment"] = json_of(*tuning.floor);
   if (tuning.study) evidence["experiment"] = json_of(*tuning.study);
@@ -226,11 +227,7 @@ std::string text_for_people(const Tuning& tuning, const Scenario& scenario) {
   if (tuning.critical_gain > 0.0)
     text += "\nWorked out from critical gain Kp " + brief(tuning.critical_gain, 5) +
             (scenario.sensors.scheme == Scheme::bar ? " per mm of error" : "") + " and critical period " +
-            fixed(1e3 * tuning.critical_period, 2) + " ms, by " +
-            (tuning.study   ? "experiment"
-             : tuning.relay ? "the relay experiment"
-                            : "theory") +
-            ".\n";
+            fixed(1e3 * tuning.critical_period, 2) + " ms, by " + tuning.from + ".\n";
   for (const std::string& sentence : words_of(tuning)) text += "  " + sentence + '\n';
   if (!tuning.trials.empty()) text += '\n' + trials_text(tuning, 1e-3 * scenario.loop.period_ms);
   return text;
@@ -239,8 +236,14 @@ std::string text_for_people(const Tuning& tuning, const Scenario& scenario) {
 }  // namespace
 
 Answer tune_command(const TuneCall& call) {
+  if (call.method == "search") {
+    SearchCall search = call.search;
+    search.input = call.input;
+    return search_command(search);
+  }
   const auto method = tune_method_of(call.method);
-  if (!method) return refused({"--method", call.method, "it is one of rules, critical, relay, habit"});
+  if (!method)
+    return refused({"--method", call.method, "it is one of rules, critical, relay, habit, search"});
   const auto loaded = load(call.input);
   if (!loaded) return refused(loaded.error());
   const auto tuning = tune(loaded->scenario, *method);

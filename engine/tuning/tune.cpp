@@ -78,22 +78,29 @@ std::optional<double> most_integral(const SampledLoop& loop, double kp) {
 }
 
 /// What the settings are worked out from: the experiment asked for, on the vehicle as it is where it gives
-/// one.
+/// one; theory where no experiment was asked for or none gives one.
 void set_critical(Tuning& tuning) {
-  const auto take = [&](std::optional<double> gain, double period) {
+  const auto take = [&](std::optional<double> gain, double period, const char* from) {
     if (tuning.critical_gain > 0.0 || !gain || !(*gain > 0.0) || !(period > 0.0)) return;
     tuning.critical_gain = *gain;
     tuning.critical_period = period;
+    tuning.from = from;
   };
   if (tuning.study) {
-    take(tuning.study->as_it_is.gain, tuning.study->as_it_is.period);
-    take(tuning.study->ideal.gain, tuning.study->ideal.period);
-  } else if (tuning.relay) {
-    for (const RelayFound* found : {&tuning.relay->as_it_is, &tuning.relay->ideal})
-      if (found->reading) take(found->reading->gain, found->reading->period);
-  } else {
-    take(tuning.theory.gain, tuning.theory.period.value_or(0.0));
+    take(tuning.study->as_it_is.gain, tuning.study->as_it_is.period, "the swing of the vehicle as it is");
+    take(tuning.study->ideal.gain, tuning.study->ideal.period,
+         "the swing without rounding, noise and jitter");
   }
+  if (tuning.relay) {
+    const auto take_relay = [&](const RelayFound& found, const char* from) {
+      if (found.reading) take(found.reading->gain, found.reading->period, from);
+    };
+    take_relay(tuning.relay->as_it_is, "the relay on the vehicle as it is");
+    take_relay(tuning.relay->ideal, "the relay without rounding, noise and jitter");
+  }
+  const bool asked = tuning.study || tuning.relay;
+  take(tuning.theory.gain, tuning.theory.period.value_or(0.0),
+       asked ? "theory, since the experiment gives none" : "theory");
 }
 
 struct Setting {

@@ -48,6 +48,7 @@ struct Tuning {
   std::optional<RelayStudy> relay;                    // relay
   std::optional<IntegralLimit> integral;              // habit, rules
   double critical_gain = 0.0, critical_period = 0.0;  // what the settings are worked out from; 0 = none
+  std::string from;  // where these come from, in words: theory also where an experiment finds nothing
   std::vector<Trial> trials;
   Choice choice;
 };

@@ -32,7 +32,8 @@ std::string readings_text(double bend) {
 
 }  // namespace
 
-TEST_CASE("a relay's period, amplitude and gain are those of the exact oscillation that SciPy finds") {
+TEST_CASE("a relay's period, amplitude and gain are those of the exact oscillation that SciPy finds",
+          "[outside]") {
   const std::string python = python_with("scipy.linalg, tomllib", "the relay experiment");
   if (python.empty()) return;
   CHECK(passes(python, "relay_check.py", "'" + saved("relay.toml", readings_text(1.0)) + "'"));

@@ -63,11 +63,31 @@ TEST_CASE("a course that no setting gets round leaves the gains null and says wh
   CHECK(json["evidence"]["reason"].get<std::string>().find("None is recommended") == 0);
 }
 
+TEST_CASE("tune hands a search on, with its options", "[shell]") {
+  const Json json = json_from(
+      "tune --json --method search --free kp --free base=20:40 --limit deviation_mm=9 "
+      "--evaluations 30 --draws 1 --goal deviation --seed 2 " +
+      scenario("circle_left"));
+  CHECK(json["method"] == "search");
+  CHECK(json["kp"].get<double>() > 0.0);
+  const Ran ran = linewright("tune --method search --free kq " + scenario("circle_left"));
+  CHECK(ran.code == 2);
+  CHECK(ran.err.find("--free: kq") != std::string::npos);
+}
+
+TEST_CASE("where the experiment finds nothing the settings come from theory, which is said", "[shell]") {
+  const Json json = json_from("tune --json --method critical " + scenario("bar"));
+  CHECK(json["evidence"]["experiment"]["ideal"]["critical_gain"].is_null());
+  CHECK(json["evidence"]["from"] == "theory, since the experiment gives none");
+  CHECK(json["evidence"]["critical_gain"] == json["evidence"]["theory"]["critical_gain"]);
+}
+
 TEST_CASE("tune refuses a method it does not have, and a scenario without a loop", "[shell]") {
   const Ran method = linewright("tune --method guess " + scenario("oval"));
   CHECK(method.code == 2);
   CHECK(method.out.empty());
-  CHECK(method.err.find("--method: guess: it is one of rules, critical, relay, habit") != std::string::npos);
+  CHECK(method.err.find("--method: guess: it is one of rules, critical, relay, habit, search") !=
+        std::string::npos);
   const Ran loop = linewright("tune --set course.line_mm=90 " + scenario("oval"));
   CHECK(loop.code == 2);
   CHECK(loop.err.find("no spot is over an edge of the line") != std::string::npos);
