@@ -35,7 +35,8 @@ target_precompile_headers(linewright_tests PRIVATE ${CMAKE_SOURCE_DIR}/tests/cat
 # All of Catch2 2 is compiled in this one file; optimised, that takes longer than the engine.
 set_source_files_properties(tests/main.cpp PROPERTIES SKIP_PRECOMPILE_HEADERS ON COMPILE_OPTIONS -O0)
 if(TARGET page_ui)
-  target_sources(linewright_tests PRIVATE web/page/host_null.cpp)  # the panel's browser, played
+  target_sources(linewright_tests PRIVATE web/page/host_null.cpp  # the panel's browser, played
+                 web/page/picture_null.cpp)
 endif()
 foreach(room shell page_ui)
   if(TARGET ${room})

@@ -37,11 +37,6 @@ void set_fragment(std::string_view fragment);
 /// Seconds since some fixed moment, never going back; of microsecond to millisecond resolution.
 double seconds();
 
-/// Puts an image of width x height pixels (row by row from the top, RGBA, 4 bytes a pixel, straight alpha) on
-/// the graphics side, in place of image `old` (0: none). Returns its number, for ImGui::Image and
-/// ImDrawList::AddImage. Sampled bilinearly, edges clamped. Width and height 1 to 4096.
-unsigned put_image(unsigned old, int width, int height, const unsigned char* rgba);
-
 /// Hands `request` to a worker of its own, where worker_app.h answers it piece by piece beside the page.
 /// `job` is the caller's number for it, unused so far. Messages arrive by app::job_message().
 void start_job(int job, std::string_view request);

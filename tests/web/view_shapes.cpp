@@ -1,4 +1,5 @@
 // What is drawn of line and path, against circles and straights whose shapes are known.
+#include <algorithm>
 #include <cmath>
 #include <numbers>
 
@@ -110,6 +111,42 @@ TEST_CASE("the path is that of the guide point, thinned by what can be seen") {
   CHECK(rows.size() == 101);
   CHECK(thinned(path, view, 0.1f, 50).size() <= 52);
   CHECK(thinned({}, view, 5).empty());
+}
+
+TEST_CASE("places that a trail leaves out lie by the stretches it keeps, in place and colour") {
+  // A straight, then a circle of radius r: a chord of length c leaves it by c^2 / (8 r) (sagitta, handbooks).
+  const float r = 60, off = 0.12f;
+  std::vector<Pixel> points;
+  for (int i = 0; i < 50; ++i) points.push_back({2.0f * static_cast<float>(i - 50), 0});
+  for (int i = 0; i < 150; ++i) {
+    const double angle = 2.0 * i / r;
+    points.push_back({r * static_cast<float>(std::sin(angle)), r * static_cast<float>(1 - std::cos(angle))});
+  }
+  const std::vector<ImU32> even(points.size(), IM_COL32(90, 80, 70, 255));
+  const std::vector<std::size_t> chosen = sufficing(points, even, off, 10);
+  CHECK(chosen.front() == 0);
+  CHECK(chosen.back() == points.size() - 1);
+  const double chord = std::sqrt(8.0 * r * off);
+  std::size_t on_bend = 0;
+  for (std::size_t k = 1; k < chosen.size(); ++k) {
+    const Pixel a = points[chosen[k - 1]], b = points[chosen[k]];
+    if (chosen[k - 1] < 50) continue;
+    CHECK(std::hypot(b.x - a.x, b.y - a.y) <= 1.01 * chord);
+    ++on_bend;
+  }
+  CHECK(static_cast<double>(on_bend) <= 1.5 * 300 / chord);
+  CHECK(chosen.size() - on_bend <= 6);
+
+  std::vector<ImU32> spotted = even;
+  spotted[20] = IM_COL32(90, 80, 81, 255);  // 11 apart: is kept; 9 apart would not be
+  spotted[35] = IM_COL32(90, 80, 79, 255);
+  const std::vector<std::size_t> seen = sufficing(points, spotted, off, 10);
+  CHECK(std::count(seen.begin(), seen.end(), 20u) == 1);
+  CHECK(std::count(seen.begin(), seen.end(), 35u) == 0);
+
+  CHECK(sufficing({}, {}, off, 10).empty());
+  CHECK(sufficing(std::span(points).first(1), even, off, 10).size() == 1);
+  CHECK(sufficing(std::span(points).first(2), even, off, 10).size() == 2);
 }
 
 TEST_CASE("the cursor stays in its pass of a crossing") {

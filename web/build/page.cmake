@@ -22,9 +22,8 @@ add_custom_command(OUTPUT ${library_source}
                            -P ${CMAKE_SOURCE_DIR}/web/build/library.cmake VERBATIM)
 
 file(GLOB page_ui_sources CONFIGURE_DEPENDS web/*.cpp web/panel/*.cpp web/view/*.cpp)
-add_library(page_ui STATIC ${page_ui_sources} web/page/typeface.cpp web/page/items.cpp web/page/damage.cpp
-            ${typeface_source}
-            ${library_source})
+add_library(page_ui STATIC ${page_ui_sources} web/page/typeface.cpp web/page/items.cpp
+            web/page/damage.cpp ${typeface_source} ${library_source})
 target_link_libraries(page_ui PRIVATE conversion_warnings PUBLIC engine imgui)
 
 if(NOT LINEWRIGHT_KIND STREQUAL "wasm")
@@ -34,8 +33,9 @@ endif()
 set(module_options -O2 -sMODULARIZE=1 -sALLOW_MEMORY_GROWTH=1 -sFILESYSTEM=0 -sDYNAMIC_EXECUTION=0
     -sMALLOC=emmalloc -sEXPORTED_FUNCTIONS=_malloc,_free)
 
-add_executable(page web/page/main.cpp web/page/fingers.cpp web/page/host_browser.cpp web/page/painter.cpp
-               web/page/sdl_absent.c ${imgui_root}/backends/imgui_impl_sdl2.cpp)
+add_executable(page web/page/main.cpp web/page/fingers.cpp web/page/host_browser.cpp
+               web/page/painter.cpp web/page/picture.cpp web/page/sdl_absent.c
+               ${imgui_root}/backends/imgui_impl_sdl2.cpp)
 set_source_files_properties(${imgui_root}/backends/imgui_impl_sdl2.cpp PROPERTIES COMPILE_OPTIONS -w)
 target_include_directories(page SYSTEM BEFORE PRIVATE ${sdl_root}/include)
 target_include_directories(page SYSTEM PRIVATE ${imgui_root}/backends)

@@ -1,5 +1,4 @@
 // web/host.h in the browser: everything is done by page.js, in Module.host.
-#include <GLES3/gl3.h>
 #include <emscripten.h>
 
 #include <cstdlib>
@@ -55,18 +54,5 @@ void set_fragment(std::string_view fragment) { ask("setFragment", fragment); }
 double seconds() { return emscripten_get_now() / 1000; }
 void start_job(int job, std::string_view request) { ask("startJob", request, {}, {}, job); }
 void cancel_job(int job) { ask("cancelJob", {}, {}, {}, job); }
-
-unsigned put_image(unsigned old, int width, int height, const unsigned char* rgba) {
-  GLuint image = old;
-  if (image == 0) glGenTextures(1, &image);
-  glBindTexture(GL_TEXTURE_2D, image);
-  glTexParameteri(GL_TEXTURE_2D, GL_TEXTURE_MIN_FILTER, GL_LINEAR);
-  glTexParameteri(GL_TEXTURE_2D, GL_TEXTURE_MAG_FILTER, GL_LINEAR);
-  glTexParameteri(GL_TEXTURE_2D, GL_TEXTURE_WRAP_S, GL_CLAMP_TO_EDGE);
-  glTexParameteri(GL_TEXTURE_2D, GL_TEXTURE_WRAP_T, GL_CLAMP_TO_EDGE);
-  glTexImage2D(GL_TEXTURE_2D, 0, GL_RGBA, width, height, 0, GL_RGBA, GL_UNSIGNED_BYTE, rgba);
-  glBindTexture(GL_TEXTURE_2D, 0);
-  return image;
-}
 
 }  // namespace lw::host

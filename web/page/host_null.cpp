@@ -26,10 +26,6 @@ std::string stored(std::string_view key) {
 std::string address() { return "http://127.0.0.1/"; }
 void set_fragment(std::string_view fragment) { asked().fragment = fragment; }
 double seconds() { return asked().seconds; }
-unsigned put_image(unsigned old, int, int, const unsigned char*) {
-  ++asked().images;
-  return old != 0 ? old : static_cast<unsigned>(asked().images);
-}
 void start_job(int job, std::string_view request) { asked().started.push_back({job, std::string(request)}); }
 void cancel_job(int job) { asked().cancelled.push_back(job); }
 

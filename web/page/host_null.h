@@ -24,7 +24,6 @@ struct Asked {
   double seconds = 0;  // what seconds() answers; the test moves it
   std::vector<Job> started;
   std::vector<int> cancelled;
-  int images = 0;  // put so far
 };
 
 /// The one record of what was asked; assign Asked{} to start anew.

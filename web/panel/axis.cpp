@@ -31,7 +31,8 @@ Ticks ticks_of(double low, double high, int most) {
 Decimated decimate(std::span<const TraceRow> rows, const Curve& curve, double from, double to,
                    std::size_t columns) {
   constexpr float nothing = std::numeric_limits<float>::quiet_NaN();
-  Decimated out{std::vector<float>(columns, nothing), std::vector<float>(columns, nothing)};
+  const std::vector<float> blank(columns, nothing);
+  Decimated out{blank, blank, blank};
   if (rows.empty() || !(to > from) || columns == 0) return out;
   const double per_column = (to - from) / static_cast<double>(columns);
   const auto value = [&](std::size_t row) {
@@ -43,14 +44,15 @@ Decimated decimate(std::span<const TraceRow> rows, const Curve& curve, double fr
   for (std::size_t c = 0; c < columns; ++c) {
     const double end = from + static_cast<double>(c + 1) * per_column;
     if (end < rows.front().t || end - per_column > rows.back().t) continue;
-    float low = next > 0 ? value(next - 1) : value(0), high = low;
+    float last = next > 0 ? value(next - 1) : value(0), low = last, high = last;
     for (; next < rows.size() && rows[next].t < end; ++next) {
-      const float v = value(next);
-      low = std::min(low, v);
-      high = std::max(high, v);
+      last = value(next);
+      low = std::min(low, last);
+      high = std::max(high, last);
     }
     out.low[c] = low;
     out.high[c] = high;
+    out.last[c] = last;
   }
   return out;
 }

@@ -7,7 +7,7 @@
 #include <vector>
 
 #include "engine/drive/trace.h"
-#include "web/panel/panel_state.h"
+#include "web/panel/strip_picture.h"
 
 namespace lw::panel {
 
@@ -26,8 +26,9 @@ struct Curve {
   double scale;  // to the unit on the screen
 };
 
-/// Lowest and highest value of the curve in each of `columns` equal parts of [from, to] (s). A part without a
-/// row has the value that holds there, that of the row before; parts outside the drive are NaN.
+/// Lowest, highest and last value of the curve in each of `columns` equal parts of [from, to] (s). Each
+/// begins with the value that holds there, that of the row before, so that neighbours share a value; parts
+/// outside the drive are NaN.
 Decimated decimate(std::span<const TraceRow> rows, const Curve& curve, double from, double to,
                    std::size_t columns);
 

@@ -35,40 +35,20 @@ ImU32 colour_of(const Theme& t, int curve) {
 
 bool is_shown(const ChartState& charts, std::size_t strip) { return (charts.shown >> strip) & 1u; }
 
-/// Thins the curves out again when the drive, the time shown or the width changed.
-void refresh(const Desk& desk, ChartState& charts, const Span& time, int columns) {
-  const std::uint64_t kept = desk.kept && desk.show_kept ? desk.kept->revision : 0;
-  const bool same_drive = charts.revision == desk.good.revision;
-  if (same_drive && charts.kept_revision == kept && charts.cached_from == time.low &&
-      charts.cached_to == time.high && charts.columns == columns) {
-    return;
-  }
+/// The height of every curve over the whole drive, so that zooming in time leaves the vertical axes alone.
+void measure_curves(const Desk& desk, ChartState& charts) {
+  if (charts.measured == desk.good.revision) return;
   const auto all = curves(desk.good.scenario.sensors.scheme);
-  const auto thin = [&](const Trace& trace, std::size_t c) {
-    return decimate(trace.rows, all[c], time.low, time.high, static_cast<std::size_t>(columns));
-  };
-  charts.curves.resize(all.size());
-  charts.kept_curves.assign(kept ? all.size() : 0, {});
+  charts.lowest.assign(all.size(), 0.0f);
+  charts.highest.assign(all.size(), 0.0f);
   for (std::size_t c = 0; c < all.size(); ++c) {
-    charts.curves[c] = thin(desk.good.trace, c);
-    if (kept) charts.kept_curves[c] = thin(desk.kept->trace, c);
-  }
-  if (!same_drive) {
-    charts.lowest.assign(all.size(), 0.0f);
-    charts.highest.assign(all.size(), 0.0f);
-    for (std::size_t c = 0; c < all.size(); ++c) {
-      for (const TraceRow& row : desk.good.trace.rows) {
-        const auto v = static_cast<float>(row.*all[c].member * all[c].scale);
-        charts.lowest[c] = std::min(charts.lowest[c], v);
-        charts.highest[c] = std::max(charts.highest[c], v);
-      }
+    for (const TraceRow& row : desk.good.trace.rows) {
+      const auto v = static_cast<float>(row.*all[c].member * all[c].scale);
+      charts.lowest[c] = std::min(charts.lowest[c], v);
+      charts.highest[c] = std::max(charts.highest[c], v);
     }
   }
-  charts.revision = desk.good.revision;
-  charts.kept_revision = kept;
-  charts.cached_from = time.low;
-  charts.cached_to = time.high;
-  charts.columns = columns;
+  charts.measured = desk.good.revision;
 }
 
 struct Plot {
@@ -76,25 +56,6 @@ struct Plot {
   float low, high;  // of the vertical axis
   float y(float value) const { return box.bottom() - (value - low) / (high - low) * box.height; }
 };
-
-void draw_curve(const Decimated& curve, const Plot& plot, ImU32 colour, float thick) {
-  ImDrawList& draw = *ImGui::GetWindowDrawList();
-  const auto flush = [&] { draw.PathStroke(colour, 0, thick); };
-  for (std::size_t c = 0; c < curve.low.size(); ++c) {
-    if (std::isnan(curve.low[c])) {
-      flush();
-      continue;
-    }
-    const float x = plot.box.x + static_cast<float>(c) + 0.5f;
-    const float low = plot.y(curve.low[c]), high = plot.y(curve.high[c]);
-    // The end nearer to the last point comes first, so that the line does not jump back.
-    const bool down =
-        draw._Path.empty() || std::abs(draw._Path.back().y - low) > std::abs(draw._Path.back().y - high);
-    draw.PathLineTo({x, down ? high : low});
-    if (std::abs(low - high) > 0.5f) draw.PathLineTo({x, down ? low : high});
-  }
-  flush();
-}
 
 /// Ticks as many as the height has room for, with one beside 0 at least.
 Ticks value_ticks(const Ui& ui, const Plot& plot) {
@@ -212,6 +173,63 @@ void draw_cursor(const Ui& ui, const Box& plots, const Span& time) {
   draw.AddCircleFilled({x, plots.bottom()}, ui.px(4), t.accent);
 }
 
+/// What the picture over the strips is to show. It lies on whole device pixels.
+ChartKey picture_key(const Ui& ui, const Box& plots, const Span& time) {
+  const Desk& desk = ui.desk;
+  const float ratio = ImGui::GetIO().DisplayFramebufferScale.x;
+  const auto whole = [&](float length) { return static_cast<int>(std::round(length * ratio)); };
+  ChartKey key;
+  key.revision = desk.good.revision;
+  key.kept_revision = desk.kept && desk.show_kept ? desk.kept->revision : 0;
+  key.from = time.low;
+  key.to = time.high;
+  key.left = whole(plots.x);
+  key.top = whole(plots.y);
+  key.columns = whole(plots.right()) - key.left;
+  key.rows = whole(plots.bottom()) - key.top;
+  key.pixels = ui.px(1.0f) * ratio;
+  key.shown = ui.state.charts.shown;
+  key.dark = desk.dark;
+  return key;
+}
+
+/// Draws the curves of one strip into the picture.
+void paint_strip(const Desk& desk, ChartState& charts, const ChartKey& key, const Strip& strip,
+                 const Plot& plot) {
+  const float ratio = ImGui::GetIO().DisplayFramebufferScale.x, top = static_cast<float>(key.top);
+  const auto row = [&](float y) { return std::clamp(static_cast<int>(y * ratio - top), 0, key.rows); };
+  const StripPlace place{row(plot.box.y), row(plot.box.bottom()), plot.y(0.0f) * ratio - top,
+                         plot.box.height / (plot.high - plot.low) * ratio};
+  const auto all = curves(desk.good.scenario.sensors.scheme);
+  const auto paint = [&](const Trace& trace, int c, ImU32 colour, float thick) {
+    const Decimated curve = decimate(trace.rows, all[static_cast<std::size_t>(c)], key.from, key.to,
+                                     static_cast<std::size_t>(key.columns));
+    draw_curve(charts.pixels, place, curve, colour, thick * key.pixels);
+  };
+  const Theme& t = theme(key.dark);
+  if (strip.count == 1 && key.kept_revision != 0) paint(desk.kept->trace, strip.first, t.kept, 1.2f);
+  for (int c = strip.first; c < strip.first + strip.count; ++c)
+    paint(desk.good.trace, c, colour_of(t, c), 1.5f);
+}
+
+/// All curves at once, painted anew only when they look different.
+void draw_curves(const Ui& ui, std::span<const Strip> chosen, std::span<const Plot> strips,
+                 const ChartKey& key) {
+  ChartState& charts = ui.state.charts;
+  if (!(key == charts.drawn)) {
+    clear(charts.pixels, key.columns, key.rows);
+    for (std::size_t i = 0; i < chosen.size(); ++i) paint_strip(ui.desk, charts, key, chosen[i], strips[i]);
+    page::show(charts.picture, key.columns, key.rows, charts.pixels.colours.data());
+    charts.drawn = key;
+  }
+  const float ratio = ImGui::GetIO().DisplayFramebufferScale.x;
+  const auto at = [&](int x, int y) {
+    return ImVec2(static_cast<float>(x) / ratio, static_cast<float>(y) / ratio);
+  };
+  ImGui::GetWindowDrawList()->AddImage(page::texture_of(charts.picture), at(key.left, key.top),
+                                       at(key.left + key.columns, key.top + key.rows));
+}
+
 /// Which strips to show, a row of names at the right of the time axis.
 void strip_choice(Ui& ui, const Box& box) {
   const Theme& t = ui.colours();
@@ -313,7 +331,7 @@ void draw_charts(Ui& ui, const Box& box) {
                              ImGuiButtonFlags_MouseButtonMiddle);
   handle_hand(ui, plots, time);
   time = time_shown(desk, charts);
-  refresh(desk, charts, time, static_cast<int>(plots.width));
+  measure_curves(desk, charts);
 
   draw_time_axis(ui, plots, time, box.bottom());
   const TraceRow row = between_rows(desk.good.trace, desk.playback.cursor);
@@ -322,25 +340,15 @@ void draw_charts(Ui& ui, const Box& box) {
   for (const Strip& strip : chosen) shares += share_of(strip);
   const float unit = (plots.height - gap * (count - 1)) / shares;
   float top = plots.y;
-  ImDrawList& draw = *ImGui::GetWindowDrawList();
-  for (std::size_t i = 0; i < chosen.size(); ++i) {
-    const Strip& strip = chosen[i];
+  std::vector<Plot> strips;
+  for (const Strip& strip : chosen) {
     const float height = unit * share_of(strip);
-    const Box inner{plots.x, top, std::floor(plots.width), height};
+    strips.push_back(plot_of(charts, strip, {plots.x, top, std::floor(plots.width), height}));
     top += height + gap;
-    const Plot plot = plot_of(charts, strip, inner);
-    draw_value_axis(ui, plot);
-    draw_names(ui, strip, {box.x, inner.y, ui.px(gutter), height}, row);
-    draw.PushClipRect({inner.x, inner.y}, {inner.right(), inner.bottom()}, true);
-    if (strip.count == 1 && !charts.kept_curves.empty()) {
-      draw_curve(charts.kept_curves[static_cast<std::size_t>(strip.first)], plot, ui.colours().kept,
-                 ui.px(1.2f));
-    }
-    for (int c = strip.first; c < strip.first + strip.count; ++c) {
-      draw_curve(charts.curves[static_cast<std::size_t>(c)], plot, colour_of(ui.colours(), c), ui.px(1.5f));
-    }
-    draw.PopClipRect();
+    draw_value_axis(ui, strips.back());
+    draw_names(ui, strip, {box.x, strips.back().box.y, ui.px(gutter), height}, row);
   }
+  draw_curves(ui, chosen, strips, picture_key(ui, plots, time));
   draw_cursor(ui, plots, time);
 }
 

@@ -36,10 +36,9 @@ void draw_line(const Ui& ui, const LinePlace& line, const Span& span, const Numb
   const float half = ui.px(2.0f), radius = ui.px(active ? 9.0f : 7.5f);
   const float spot = place_of(span, value, line.left, line.width);
   const float origin = place_of(span, std::clamp(0.0, span.low, span.high), line.left, line.width);
-  draw.AddRectFilled({line.left, line.y - half}, {line.left + line.width, line.y + half}, t.rule, half);
+  draw.AddRectFilled({line.left, line.y - half}, {line.left + line.width, line.y + half}, t.rule);
   const ImU32 done = hot || active ? t.accent : t.faint;
-  draw.AddRectFilled({std::min(origin, spot), line.y - half}, {std::max(origin, spot), line.y + half}, done,
-                     half);
+  draw.AddRectFilled({std::min(origin, spot), line.y - half}, {std::max(origin, spot), line.y + half}, done);
   if (grip.usual >= span.low && grip.usual <= span.high) {
     const float notch = place_of(span, grip.usual, line.left, line.width);
     draw.AddLine({notch, line.y - ui.px(8)}, {notch, line.y + ui.px(8)}, t.rule, ui.px(2));

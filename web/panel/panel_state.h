@@ -6,7 +6,9 @@
 #include <vector>
 
 #include "engine/scenario/validate.h"
+#include "web/page/picture.h"
 #include "web/panel/desk.h"
+#include "web/panel/strip_picture.h"
 
 namespace lw::panel {
 
@@ -28,9 +30,15 @@ struct HeldSpot {
   double exact = 0.0;  // before snapping, for slow movements
 };
 
-/// One curve as it is drawn: for each pixel column the lowest and the highest value.
-struct Decimated {
-  std::vector<float> low, high;  // same length; NaN where the drive is over
+/// All that the picture of the curves depends on; while it stays, so does the picture.
+struct ChartKey {
+  std::uint64_t revision = 0, kept_revision = 0;  // 0: none
+  double from = 0.0, to = 0.0;                    // s
+  int left = 0, top = 0, columns = 0, rows = 0;   // device pixels on the canvas
+  float pixels = 1.0f;                            // device pixels in a measure of 1 px
+  unsigned shown = 0;
+  bool dark = true;
+  friend bool operator==(const ChartKey&, const ChartKey&) = default;
 };
 
 struct ChartState {
@@ -38,12 +46,11 @@ struct ChartState {
   bool open = true;
   unsigned shown = 0x0F;  // bit i: strip i of strips() in charts.h
 
-  // What the cached curves belong to.
-  std::uint64_t revision = 0, kept_revision = 0;
-  double cached_from = 0.0, cached_to = 0.0;
-  int columns = 0;
-  std::vector<Decimated> curves, kept_curves;  // by curve number
-  std::vector<float> lowest, highest;          // by curve number, over the whole drive
+  std::uint64_t measured = 0;          // the drive that the next two belong to
+  std::vector<float> lowest, highest;  // by curve number, over the whole drive, 0 included
+  ChartKey drawn;                      // what the picture shows
+  Pixels pixels;
+  page::Picture picture;
 };
 
 struct PanelState {

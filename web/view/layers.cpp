@@ -31,6 +31,23 @@ ImVec2 across(const View& view, const CoursePoint& p, double along_mm, double le
   return vec(to_screen(view, x, y));
 }
 
+struct Trail {
+  std::vector<Pixel> points;
+  std::vector<ImU32> colours;
+};
+
+/// The same to the eye with fewer places: every one costs six triangles.
+Trail reduced(const Trail& trail) {
+  constexpr float off_px = 0.12f;
+  constexpr int off_shade = 6;
+  Trail fewer;
+  for (const std::size_t i : sufficing(trail.points, trail.colours, off_px, off_shade)) {
+    fewer.points.push_back(trail.points[i]);
+    fewer.colours.push_back(trail.colours[i]);
+  }
+  return fewer;
+}
+
 /// Words by a mark, on a plate so that they can be read over anything.
 void label(ImDrawList& draw, const Frame& frame, Pixel at, const char* text, ImU32 colour,
            const panel::Theme& theme, float unit) {
@@ -114,24 +131,26 @@ void draw_start(ImDrawList& draw, const Centreline& line, const View& view, doub
 void add_path(Mesh& mesh, const Path& path, const View& view, const Scenario& scenario, bool dark,
               float half) {
   const double far_mm = scenario.drive.lost_mm;
-  const std::vector<std::size_t> rows = thinned(path, view, 2.0f);
-  std::vector<Pixel> points;
-  std::vector<ImU32> colours;
-  points.reserve(rows.size()), colours.reserve(rows.size());
-  for (const std::size_t row : rows) {
-    points.push_back(to_screen(view, path.x[row], path.y[row]));
-    colours.push_back(panel::deviation_colour(dark, share_of_scale(path.deviation[row], far_mm)));
+  Trail trail;
+  for (const std::size_t row : thinned(path, view, 2.0f)) {
+    trail.points.push_back(to_screen(view, path.x[row], path.y[row]));
+    trail.colours.push_back(panel::deviation_colour(dark, share_of_scale(path.deviation[row], far_mm)));
   }
+  trail = reduced(trail);
   const auto tape = static_cast<float>(0.5 * scenario.course.line_mm * view.scale);
-  if (tape > half + 2.5f) add_trail(mesh, points, std::vector<ImU32>{panel::theme(dark).bare}, half + 1.25f);
-  add_trail(mesh, points, colours, half);
+  if (tape > half + 2.5f)
+    add_trail(mesh, trail.points, std::vector<ImU32>{panel::theme(dark).bare}, half + 1.25f);
+  add_trail(mesh, trail.points, trail.colours, half);
 }
 
 void add_ghost(Mesh& mesh, const Path& path, const View& view, ImU32 colour, float half) {
-  std::vector<Pixel> points;
-  for (const std::size_t row : thinned(path, view, 3.0f))
-    points.push_back(to_screen(view, path.x[row], path.y[row]));
-  add_trail(mesh, points, std::vector<ImU32>{colour}, half);
+  Trail trail;
+  for (const std::size_t row : thinned(path, view, 3.0f)) {
+    trail.points.push_back(to_screen(view, path.x[row], path.y[row]));
+    trail.colours.push_back(colour);
+  }
+  trail = reduced(trail);
+  add_trail(mesh, trail.points, trail.colours, half);
 }
 
 void draw_marks(ImDrawList& draw, const panel::GoodDrive& good, const Path& path, const View& view,

@@ -12,6 +12,28 @@ Pixel place(const Path& path, const View& view, std::size_t row) {
   return to_screen(view, path.x[row], path.y[row]);
 }
 
+constexpr std::size_t longest_stretch = 24;  // places; the search stays quick, and bends stay round
+
+/// How far p lies from the stretch a to b, and at which share of it.
+struct Foot {
+  float distance, share;
+};
+Foot foot_on(Pixel a, Pixel b, Pixel p) {
+  const float dx = b.x - a.x, dy = b.y - a.y, square = dx * dx + dy * dy;
+  const float along = square > 0.0f ? ((p.x - a.x) * dx + (p.y - a.y) * dy) / square : 0.0f;
+  const float share = std::clamp(along, 0.0f, 1.0f);
+  return {distance(p, {a.x + share * dx, a.y + share * dy}), share};
+}
+
+bool is_between(ImU32 a, ImU32 b, float share, ImU32 colour, int off_shade) {
+  for (int shift = 0; shift < 32; shift += 8) {
+    const auto part = [&](ImU32 c) { return static_cast<float>((c >> shift) & 255u); };
+    const float mixed = part(a) + share * (part(b) - part(a));
+    if (std::abs(mixed - part(colour)) > static_cast<float>(off_shade)) return false;
+  }
+  return true;
+}
+
 }  // namespace
 
 Path path_of(const Trace& trace, double forward_mm) {
@@ -42,6 +64,27 @@ std::vector<std::size_t> thinned(const Path& path, const View& view, float apart
   }
   if (path.x.size() > 1) rows.push_back(path.x.size() - 1);
   return rows;
+}
+
+std::vector<std::size_t> sufficing(std::span<const Pixel> points, std::span<const ImU32> colours,
+                                   float off_px, int off_shade) {
+  std::vector<std::size_t> chosen;
+  if (points.empty()) return chosen;
+  chosen.push_back(0);
+  const auto stands_for = [&](std::size_t a, std::size_t b) {
+    for (std::size_t i = a + 1; i < b; ++i) {
+      const Foot foot = foot_on(points[a], points[b], points[i]);
+      if (foot.distance > off_px) return false;
+      if (!is_between(colours[a], colours[b], foot.share, colours[i], off_shade)) return false;
+    }
+    return true;
+  };
+  for (std::size_t i = 2; i < points.size(); ++i) {
+    const std::size_t from = chosen.back();
+    if (i - from > longest_stretch || !stands_for(from, i)) chosen.push_back(i - 1);
+  }
+  if (points.size() > 1) chosen.push_back(points.size() - 1);
+  return chosen;
 }
 
 NearRow nearest_row(const Path& path, const View& view, Pixel p, std::size_t favoured, float slack_px) {

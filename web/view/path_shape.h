@@ -5,7 +5,10 @@
 // can show.
 #pragma once
 
+#include <imgui.h>
+
 #include <cstddef>
+#include <span>
 #include <vector>
 
 #include "engine/drive/trace.h"
@@ -24,6 +27,12 @@ Path path_of(const Trace& trace, double forward_mm);
 /// Rows to be drawn: the first, the last, and others at least `apart_px` from the one before, more where the
 /// path is longer than `most` of them.
 std::vector<std::size_t> thinned(const Path& path, const View& view, float apart_px, std::size_t most = 6000);
+
+/// Which of the places of a trail suffice to draw it: straight stretches of even colour between them pass
+/// within `off_px` of those left out, and differ from their colours by `off_shade` of 255 at most. The first
+/// and the last are among them.
+std::vector<std::size_t> sufficing(std::span<const Pixel> points, std::span<const ImU32> colours,
+                                   float off_px, int off_shade);
 
 /// The row whose place is nearest to `p` on the screen and its distance in px; of places about as near
 /// (within `slack_px`) the one nearest in order to `favoured`, so that a crossing does not make the cursor
