@@ -5,7 +5,6 @@
 
 #include "engine/scenario/fields.h"
 #include "engine/scenario/value_text.h"
-#include "engine/tuning/kinds.h"
 #include "shell/commands.h"
 #include "shell/driven.h"
 #include "shell/table.h"
@@ -92,19 +91,6 @@ Result<SearchSettings> settings_of(const SearchCall& call) {
   settings.draws = call.draws;
   settings.seed = call.seed;
   return settings;
-}
-
-/// Gains set from the critical gain, one a kind, as further places to start from.
-std::vector<std::vector<double>> starts_of(const Scenario& scenario, const std::vector<FreeVariable>& free) {
-  std::vector<std::vector<double>> starts;
-  for (const Kind kind : all_kinds) {
-    const auto controller = retuned(scenario, kind, scenario.controller.base_pct);
-    if (!controller) continue;
-    Scenario with = scenario;
-    with.controller = *controller;
-    starts.push_back(values_of(with, free));
-  }
-  return starts;
 }
 
 /// What to give --set to drive a candidate.
@@ -224,7 +210,7 @@ Answer search_command(const SearchCall& call) {
   if (!loaded) return refused(loaded.error());
   const auto plan = plan_of(*loaded);
   if (!plan) return refused(plan.error());
-  settings->starts = starts_of(loaded->scenario, settings->free);
+  settings->starts = rule_starts(loaded->scenario, settings->free);
   const auto found = search_gains(loaded->scenario, *settings, {}, plan->ground);
   if (!found) return refused(found.error());
   Answer answer;

@@ -6,6 +6,7 @@
 
 #include "engine/drive/drive.h"
 #include "engine/theory/margins.h"
+#include "engine/tuning/rules.h"
 #include "engine/tuning/search_space.h"
 
 namespace lw {
@@ -280,6 +281,20 @@ std::vector<double> values_of(const Scenario& scenario, const std::vector<FreeVa
   std::vector<double> values;
   for (const FreeVariable& one : free) values.push_back(value_of(scenario, one.variable));
   return values;
+}
+
+std::vector<std::vector<double>> rule_starts(const Scenario& scenario,
+                                             const std::vector<FreeVariable>& free) {
+  std::vector<std::vector<double>> starts;
+  const Result<SampledLoop> loop = linearise(scenario);
+  if (!loop) return starts;
+  const Critical alone = critical(*loop);
+  if (!alone.gain) return starts;
+  for (const Rule& rule : published_rules) {
+    const LoopGains gains = per_loop(gains_by(rule, *alone.gain, *alone.period), loop->period);
+    starts.push_back(values_of(with_gains(scenario, gains, filter_for(scenario, gains)), free));
+  }
+  return starts;
 }
 
 Scenario with_values(Scenario scenario, const std::vector<FreeVariable>& free,

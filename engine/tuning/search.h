@@ -105,6 +105,10 @@ Result<SearchAnswer> search_gains(const Scenario& scenario, const SearchSettings
 Result<Candidate> judge(const Scenario& scenario, const SearchSettings& settings,
                         std::shared_ptr<const Ground> ground = nullptr);
 
+/// The published rules (rules.h), from the critical gain of the theory, as places to start from: with them
+/// the answer is no worse than any of them. In the order of published_rules; none without a critical gain.
+std::vector<std::vector<double>> rule_starts(const Scenario& scenario, const std::vector<FreeVariable>& free);
+
 /// Values of the scenario in the order of `free`, and the scenario with others.
 std::vector<double> values_of(const Scenario& scenario, const std::vector<FreeVariable>& free);
 Scenario with_values(Scenario scenario, const std::vector<FreeVariable>& free,

@@ -1,16 +1,19 @@
 // How long one drive takes: 30 s at 188 loops a second, the floor raster not counted.
 //
 //   linewright_benchmark
+//   linewright_benchmark search   the gain search against every published rule (search_table.h)
 //
 // Every figure is the median of interleaved rounds, so that a machine that speeds up or slows down meets all
 // rows alike. The ratio to the first row is what can be quoted; milliseconds belong to the machine at hand.
 #include <algorithm>
 #include <cstdio>
+#include <cstring>
 #include <ctime>
 #include <vector>
 
 #include "build_info.h"
 #include "engine/drive/drive.h"
+#include "tests/benchmark/search_table.h"
 
 namespace {
 
@@ -73,8 +76,9 @@ double median(std::vector<double> values) {
 
 }  // namespace
 
-int main() {
+int main(int argc, char** argv) {
   std::printf("%s\n", build_info);
+  if (argc == 2 && std::strcmp(argv[1], "search") == 0) return benchmark::print_search_table() == 0 ? 0 : 1;
   std::vector<Case> all = cases();
   std::vector<Plan> plans;
   for (const Case& one : all) plans.push_back(*make_plan(one.scenario));

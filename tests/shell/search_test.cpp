@@ -63,3 +63,12 @@ TEST_CASE("words of a search that are none are refused with what there is", "[sh
   call.free = {};
   CHECK(refusal(call) == "free: nothing is set free to be searched");
 }
+
+TEST_CASE("the same search by tune gives the same answer", "[shell]") {
+  const std::string call =
+      "tune --json --method search --free kp,ki --goal deviation --limit gain_margin_db=6 --evaluations 30 " +
+      scenario("circle_left");
+  const Json once = json_from(call);
+  CHECK(once["evidence"]["evaluations"] == 30);
+  CHECK(once == json_from(call));
+}

@@ -101,7 +101,8 @@ TEST_CASE("the answer is at least as good as every start, judged alike") {
   settings.limits.gain_margin_db = 3.0;
   settings.evaluations = 30;
   settings.draws = 2;
-  settings.starts = {{0.1, 0.0}, {0.2, 0.001}, {0.5, 0.002}};
+  settings.starts = rule_starts(scenario, settings.free);
+  REQUIRE(settings.starts.size() >= 8);
   const SearchAnswer found = searched(scenario, settings);
   for (const auto& start : settings.starts) {
     const auto judged = judge(with_values(scenario, settings.free, start), settings);
