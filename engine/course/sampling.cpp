@@ -2,15 +2,12 @@
 
 #include <algorithm>
 #include <cmath>
-#include <cstdio>
+
+#include "engine/numeric/words.h"
 
 namespace lw {
 
-std::string rounded_text(double value) {
-  char text[32];
-  std::snprintf(text, sizeof text, "%.6g", value);
-  return text;
-}
+std::string rounded_text(double value) { return significant(value, 6); }
 
 std::string place_text(const char* list, std::size_t index) {
   return std::string(list) + "[" + std::to_string(index) + "]";

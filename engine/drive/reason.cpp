@@ -4,9 +4,9 @@
 // as lost, to the end. Reasons are tried from the most to the least specific; the thresholds are shares of
 // the departure and are judgement, chosen on the scenarios of this project.
 #include <cmath>
-#include <cstdio>
 
 #include "engine/drive/drive.h"
+#include "engine/numeric/words.h"
 
 namespace lw {
 
@@ -19,12 +19,6 @@ struct Departure {
   std::size_t blind =
       0;  // the row from which no sensor saw the line until the end; = end when one always did
 };
-
-std::string formatted(const char* format, double value) {
-  char text[64];
-  std::snprintf(text, sizeof text, format, value);
-  return text;
-}
 
 bool sees(const Plan& plan, const Trace& trace, std::size_t row) {
   const Optics<double>& optics = plan.rig.optics;

@@ -2,18 +2,13 @@
 
 #include <algorithm>
 #include <cmath>
-#include <cstdio>
+
+#include "engine/numeric/words.h"
 
 namespace lw {
 namespace {
 
-std::string number(double value, int digits) {
-  char text[32];
-  std::snprintf(text, sizeof text, "%.*f", digits, value);
-  return text;
-}
-
-std::string percent(double value) { return number(value, 2) + " %"; }
+std::string percent(double value) { return formatted("%.2f", value) + " %"; }
 
 class Ladder {
  public:
@@ -161,7 +156,7 @@ Result<Ceiling> find_ceiling(const Scenario& scenario, const Choice& choice, con
 std::string in_words(const Ceiling& ceiling) {
   if (!ceiling.base_pct) return nothing_finishes(ceiling);
   std::string text = "Gets round up to a base of " + percent(*ceiling.base_pct) + ", " +
-                     number(1e3 * ceiling.speed, 0) + " mm/s";
+                     formatted("%.0f", 1e3 * ceiling.speed) + " mm/s";
   const Rung* beyond = ceiling.first_beyond();
   text += beyond ? "; at " + percent(beyond->base_pct) + " it does not: " + beyond->reason + "."
                  : ", the highest that was tried.";

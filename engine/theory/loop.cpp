@@ -1,9 +1,9 @@
 #include "engine/theory/loop.h"
 
 #include <cmath>
-#include <cstdio>
 
 #include "engine/drive/plan.h"
+#include "engine/numeric/words.h"
 #include "engine/scenario/validate.h"
 #include "engine/theory/notes.h"
 #include "engine/theory/sensor_slope.h"
@@ -105,12 +105,6 @@ Result<SensorPoint> point_of(const Scenario& scenario, const Optics<double>& opt
   return sensor_point(sensors, 1e-3 * scenario.drive.lost_mm);
 }
 
-std::string number(double value, int digits) {
-  char text[32];
-  std::snprintf(text, sizeof text, "%.*g", digits, value);
-  return text;
-}
-
 }  // namespace
 
 Result<SampledLoop> linearise(const Scenario& scenario) {
@@ -119,7 +113,7 @@ Result<SampledLoop> linearise(const Scenario& scenario) {
   const Optics<double> optics = optics_of(scenario.sensors, scenario.floor);
   const double base = 1e-2 * scenario.controller.base_pct;
   if (base <= train.dead_band)
-    return Error{"controller.base_pct", number(scenario.controller.base_pct, 6),
+    return Error{"controller.base_pct", significant(scenario.controller.base_pct, 6),
                  "not beyond the motors' dead band: the vehicle stands still, and there is no loop"};
   if (scenario.controller.steer_limit_pct <= 0.0)
     return Error{"controller.steer_limit_pct", "0", "nothing steers, and there is no loop"};
@@ -218,9 +212,9 @@ SpeedLimit speed_limit(const SampledLoop& loop) {
 }
 
 std::string in_words(const SpeedLimit& limit, const SampledLoop& loop) {
-  const auto ms = [](double seconds) { return number(1e3 * seconds, 4) + " ms"; };
+  const auto ms = [](double seconds) { return significant(1e3 * seconds, 4) + " ms"; };
   const std::string offset = loop.forward > 0.0
-                                 ? "The sensors lie " + number(1e3 * loop.forward, 4) +
+                                 ? "The sensors lie " + significant(1e3 * loop.forward, 4) +
                                        " mm ahead of the axle, which acts as a derivative of " +
                                        ms(limit.lead) + " (offset over speed) without any noise"
                                  : "The sensors lie above the axle and give the loop no lead";
@@ -230,12 +224,12 @@ std::string in_words(const SpeedLimit& limit, const SampledLoop& loop) {
   std::string verdict =
       stable ? "P alone is stable at small gains up to " : "P alone is stable at no small gain";
   if (stable) {
-    verdict += number(1e3 * limit.speed, 4) + " mm/s";
+    verdict += significant(1e3 * limit.speed, 4) + " mm/s";
     verdict += limit.base > 1.0 ? ", faster than this vehicle goes."
-                                : ", a base of " + number(1e2 * limit.base, 3) + " %.";
+                                : ", a base of " + significant(1e2 * limit.base, 3) + " %.";
   } else if (limit.speed > 0.0) {
-    verdict +=
-        " above " + number(1e3 * limit.speed, 4) + " mm/s, a base of " + number(1e2 * limit.base, 3) + " %.";
+    verdict += " above " + significant(1e3 * limit.speed, 4) + " mm/s, a base of " +
+               significant(1e2 * limit.base, 3) + " %.";
   } else {
     verdict += " at any speed.";
   }

@@ -2,8 +2,8 @@
 
 #include <algorithm>
 #include <cmath>
-#include <cstdio>
 
+#include "engine/numeric/words.h"
 #include "engine/theory/margins.h"
 #include "engine/theory/poles.h"
 
@@ -111,27 +111,19 @@ bool contradicts(const DerivativeCase& found) {
   return restless && most > 1.0 - worth && usual > 1.0 - worth;
 }
 
-std::string number(double value, int digits) {
-  char text[32];
-  if (std::fabs(value) >= 1000.0)  // no exponents for people
-    std::snprintf(text, sizeof text, "%.0f", value);
-  else
-    std::snprintf(text, sizeof text, "%.*g", digits, value);
-  return text;
-}
-std::string ms(double seconds) { return number(1e3 * seconds, 3) + " ms"; }
-std::string percent(double share) { return number(1e2 * share, 2) + " %"; }
+std::string ms(double seconds) { return readable(1e3 * seconds, 3) + " ms"; }
+std::string percent(double share) { return readable(1e2 * share, 2) + " %"; }
 std::string point_text(const DerivativePoint& point) {
-  return "Kd " + number(point.kd, 3) + " per loop (" + ms(point.time) + " of derivative)" +
+  return "Kd " + readable(point.kd, 3) + " per loop (" + ms(point.time) + " of derivative)" +
          (point.filter > 0.0 ? " behind a filter of " + ms(point.filter) : " without a filter");
 }
 
 std::string gained_text(const DerivativePoint& with, const DerivativePoint& without) {
   if (!without.stable)
-    return "makes a loop stable that is not without it (sensitivity peak " + number(with.peak, 3) +
-           ", least damping " + number(with.damping, 2) + ")";
-  return "takes the sensitivity peak from " + number(without.peak, 3) + " to " + number(with.peak, 3) +
-         " and the least damping from " + number(without.damping, 2) + " to " + number(with.damping, 2);
+    return "makes a loop stable that is not without it (sensitivity peak " + readable(with.peak, 3) +
+           ", least damping " + readable(with.damping, 2) + ")";
+  return "takes the sensitivity peak from " + readable(without.peak, 3) + " to " + readable(with.peak, 3) +
+         " and the least damping from " + readable(without.damping, 2) + " to " + readable(with.damping, 2);
 }
 
 std::string paid_text(const DerivativePoint& with, const DerivativePoint& without, double allowed) {
@@ -143,8 +135,9 @@ std::string paid_text(const DerivativePoint& with, const DerivativePoint& withou
 std::string drive_text(const Summary& summary) {
   if (summary.outcome != Outcome::finished)
     return summary.outcome == Outcome::line_lost ? "loses the line" : "does not finish in time";
-  return number(1e3 * summary.deviation_max, 3) + " mm at most, " + number(1e3 * summary.deviation_rms, 3) +
-         " mm rms, " + number(summary.reversals_per_s, 3) + " reversals per s";
+  return readable(1e3 * summary.deviation_max, 3) + " mm at most, " +
+         readable(1e3 * summary.deviation_rms, 3) + " mm rms, " + readable(summary.reversals_per_s, 3) +
+         " reversals per s";
 }
 
 std::string words_of(const DerivativeCase& found) {
@@ -176,13 +169,13 @@ std::string words_of(const DerivativeCase& found) {
     return "D does not pay: the loop is unstable without it, and no D makes it stable. " + offset +
            "Less gain, less speed or less delay is needed first.";
   const std::string now = "D does not pay: without it the sensitivity peak is " +
-                          number(found.without.peak, 3) + " and the least damping " +
-                          number(found.without.damping, 2);
+                          readable(found.without.peak, 3) + " and the least damping " +
+                          readable(found.without.damping, 2);
   if (!found.sharpest) return now + ", and every D makes the loop unstable. " + offset;
   return now +
          (found.enough ? ", which is well damped. "
                        : ", and no D makes that better by enough to matter (a peak of " +
-                             number(found.sharpest->peak, 3) + " at the lowest). ") +
+                             readable(found.sharpest->peak, 3) + " at the lowest). ") +
          offset.substr(0, offset.size() - 1) + course;
 }
 
@@ -227,7 +220,7 @@ Result<DerivativeCase> weigh_derivative(const Scenario& scenario, const Derivati
   Result<SampledLoop> loop = linearise(scenario);
   if (!loop) return loop.error();
   if (!(loop->gains.kp > 0.0))
-    return Error{"controller.kp", number(scenario.controller.kp, 6),
+    return Error{"controller.kp", readable(scenario.controller.kp, 6),
                  "D is weighed beside a P gain, which has to be above 0"};
   const ErrorNoise noise = error_noise(scenario, *loop);
   const SpeedLimit limit = speed_limit(*loop);

@@ -2,20 +2,14 @@
 
 #include <algorithm>
 #include <cmath>
-#include <cstdio>
+
+#include "engine/numeric/words.h"
 
 namespace lw {
 namespace {
 
 constexpr int noisy_draws = 6;
 constexpr double worth_a_word = 0.01;  // share of the gain
-
-template <class... Value>
-std::string text(const char* format, Value... value) {
-  char buffer[200];
-  std::snprintf(buffer, sizeof buffer, format, value...);
-  return buffer;
-}
 
 double change(const std::optional<double>& found, const std::optional<double>& from) {
   return found && from ? *found / *from - 1.0 : 0.0;
@@ -33,21 +27,22 @@ CriticalFound found_on(const Straight& straight, const CriticalFound& before = {
   return critical_by_experiment(straight, setting);
 }
 
-std::string signed_percent(double share) { return text("%+.1f %%", 1e2 * share); }
+std::string signed_percent(double share) { return formatted("%+.1f %%", 1e2 * share); }
 
 std::string ideal_words(const CriticalStudy& study) {
   const CriticalFound& ideal = study.ideal;
   std::string words =
-      text("A swing of %.3g mm without rounding, noise or jitter: Kp %.4g against %.4g by theory, ",
-           1e3 * ideal.amplitude, *ideal.gain, *study.ideal_theory.gain) +
+      formatted("A swing of %.3g mm without rounding, noise or jitter: Kp %.4g against %.4g by theory, ",
+                1e3 * ideal.amplitude, *ideal.gain, *study.ideal_theory.gain) +
       signed_percent(study.ideal_change) +
-      text(" (period %.1f against %.1f ms).", 1e3 * ideal.period, 1e3 * *study.ideal_theory.period);
-  words += text(" Over such a swing the sensors give %.1f %% of the slope that theory takes, which makes ",
+      formatted(" (period %.1f against %.1f ms).", 1e3 * ideal.period, 1e3 * *study.ideal_theory.period);
+  words +=
+      formatted(" Over such a swing the sensors give %.1f %% of the slope that theory takes, which makes ",
                 1e2 * study.slope_left) +
-           signed_percent(1.0 / study.slope_left - 1.0) + "; " +
-           signed_percent(*ideal.gain / study.expected - 1.0) + " is left.";
+      signed_percent(1.0 / study.slope_left - 1.0) + "; " +
+      signed_percent(*ideal.gain / study.expected - 1.0) + " is left.";
   if (ideal.limited > 0.0)
-    words += text(
+    words += formatted(
         " Commands reach their limits in %.0f %% of the loops even so, and a swing small enough not to "
         "moves no reading.",
         1e2 * ideal.limited);
@@ -63,7 +58,8 @@ std::string grain_words(const CriticalStudy& study, const EffectFound& one, cons
   if (readings && scenario.sensors.scheme == Scheme::bar) return "";
   const double step = 1e-2 * (readings ? scenario.sensors.step_pct : scenario.vehicle.command_step_pct);
   const double swing = readings ? study.ideal.error_amplitude : study.ideal.steer_amplitude;
-  return text(", the swing being %.1f steps of ", swing / step) + (readings ? "the reading" : "the command");
+  return formatted(", the swing being %.1f steps of ", swing / step) +
+         (readings ? "the reading" : "the command");
 }
 
 std::string effect_words(const CriticalStudy& study, const EffectFound& one, const Scenario& scenario) {
@@ -73,7 +69,7 @@ std::string effect_words(const CriticalStudy& study, const EffectFound& one, con
   std::string line =
       "With " + one.name + " alone: " + signed_percent(one.change) + grain_words(study, one, scenario);
   if (one.found.scatter > 0.0)
-    line += text(", and from draw to draw it strays by %.1f %%", 1e2 * one.found.scatter);
+    line += formatted(", and from draw to draw it strays by %.1f %%", 1e2 * one.found.scatter);
   if (one.effect == Effect::refresh)
     line += "; theory, which takes the mean age of readings as delay, has " +
             signed_percent(change(study.theory.gain, study.ideal_theory.gain));
@@ -86,7 +82,7 @@ std::string whole_words(const CriticalStudy& study) {
     return "The vehicle has no rounding, noise, jitter, easing or refresh that could change it.";
   if (!study.as_it_is.gain)
     return "As it is, the vehicle shows no critical gain: " + study.as_it_is.reason + ".";
-  const std::string line = text("As it is, the vehicle swings on from Kp %.4g, ", *study.as_it_is.gain) +
+  const std::string line = formatted("As it is, the vehicle swings on from Kp %.4g, ", *study.as_it_is.gain) +
                            signed_percent(study.as_it_is_change) + " against theory. ";
   const double whole = change(study.as_it_is.gain, study.ideal.gain);
   if (std::fabs(whole) < worth_a_word)
@@ -102,13 +98,13 @@ std::string whole_words(const CriticalStudy& study) {
 
 std::string larger_words(const LargerSwing& larger) {
   const CriticalFound& found = larger.found;
-  const std::string swing = text("A swing of %.3g mm ", 1e3 * found.wanted);
+  const std::string swing = formatted("A swing of %.3g mm ", 1e3 * found.wanted);
   if (!larger.kept_up)
     return swing +
            "is not kept up at any gain: the commands reach their limits before it, and a swing that "
            "large dies out to a smaller one.";
-  return swing + text("needs Kp %.4g to keep up, ", *found.gain) + signed_percent(larger.change) +
-         text(": over it the sensors give %.0f %% of their slope.", 1e2 * larger.slope_left);
+  return swing + formatted("needs Kp %.4g to keep up, ", *found.gain) + signed_percent(larger.change) +
+         formatted(": over it the sensors give %.0f %% of their slope.", 1e2 * larger.slope_left);
 }
 
 std::string no_gain_words(const CriticalStudy& study) {
@@ -198,17 +194,17 @@ Scenario ideal(Scenario scenario) {
 std::string name_of(Effect effect, const Scenario& scenario) {
   switch (effect) {
     case Effect::reading_steps:
-      return text("rounding of readings to %.3g %%", scenario.sensors.step_pct);
+      return formatted("rounding of readings to %.3g %%", scenario.sensors.step_pct);
     case Effect::command_steps:
-      return text("rounding of commands to %.3g %%", scenario.vehicle.command_step_pct);
+      return formatted("rounding of commands to %.3g %%", scenario.vehicle.command_step_pct);
     case Effect::noise:
-      return text("noise of %.3g points", scenario.sensors.noise_pct);
+      return formatted("noise of %.3g points", scenario.sensors.noise_pct);
     case Effect::jitter:
-      return text("jitter of %.3g %%", scenario.loop.jitter_pct);
+      return formatted("jitter of %.3g %%", scenario.loop.jitter_pct);
     case Effect::easing:
-      return text("easing of %.3g", scenario.controller.ease);
+      return formatted("easing of %.3g", scenario.controller.ease);
     case Effect::refresh:
-      return text("readings refreshed every %.3g ms", scenario.sensors.refresh_ms);
+      return formatted("readings refreshed every %.3g ms", scenario.sensors.refresh_ms);
   }
   return "";
 }

@@ -2,8 +2,8 @@
 
 #include <algorithm>
 #include <cmath>
-#include <cstdio>
 
+#include "engine/numeric/words.h"
 #include "engine/theory/loop.h"
 #include "engine/theory/roots.h"
 
@@ -185,24 +185,15 @@ void work_out(const Scenario& scenario, const std::optional<double>& time, BendF
   bend.integral_in_time = time && bend.duration > *time;
 }
 
-std::string number(double value, int digits) {
-  char text[32];
-  if (std::fabs(value) >= 1000.0)  // no exponents for people
-    std::snprintf(text, sizeof text, "%.0f", value);
-  else
-    std::snprintf(text, sizeof text, "%.*g", digits, value);
-  return text;
-}
-
 std::string error_text(const Scenario& scenario, double error) {
-  if (scenario.sensors.scheme == Scheme::bar) return number(error, 3) + " mm";
-  return number(1e2 * error, 3) + " % of full scale";
+  if (scenario.sensors.scheme == Scheme::bar) return readable(error, 3) + " mm";
+  return readable(1e2 * error, 3) + " % of full scale";
 }
 
 std::string bend_text(const BendFigures& bend) {
   if (!std::isfinite(bend.radius)) return "on the straight";
   return std::string("in the ") + (bend.left ? "left" : "right") + " bend of " +
-         number(1e3 * bend.radius, 4) + " mm";
+         readable(1e3 * bend.radius, 4) + " mm";
 }
 
 std::string kept_text(const Scenario& scenario, const IntegralFigures& found) {
@@ -212,12 +203,12 @@ std::string kept_text(const Scenario& scenario, const IntegralFigures& found) {
   std::string text;
   if (std::isfinite(tightest.radius)) {
     text = tightest.held ? "P alone keeps an error of " + error_text(scenario, tightest.held->error) + " " +
-                               bend_text(tightest) + " (" + number(1e3 * tightest.held->deviation, 3) +
+                               bend_text(tightest) + " (" + readable(1e3 * tightest.held->deviation, 3) +
                                " mm beside the line)"
                          : "P alone cannot hold the line " + bend_text(tightest) + " at this base";
     text += tightest.losing_base < 1.0
-                ? " and must lose it above a base of " + number(1e2 * tightest.losing_base, 3) + " %, " +
-                      number(1e3 * tightest.losing_speed, 3) + " mm/s, if it is long enough. "
+                ? " and must lose it above a base of " + readable(1e2 * tightest.losing_base, 3) + " %, " +
+                      readable(1e3 * tightest.losing_speed, 3) + " mm/s, if it is long enough. "
             : tightest.held ? " and need not lose it at any base. "
                             : ". ";
   }
@@ -232,10 +223,10 @@ std::string kept_text(const Scenario& scenario, const IntegralFigures& found) {
 
 std::string removed_text(const IntegralFigures& found) {
   if (found.tried || !found.time)
-    return "The scenario has no I. One of Ki " + number(found.tried_ki, 3) +
+    return "The scenario has no I. One of Ki " + readable(found.tried_ki, 3) +
            " per loop would take the error away in about " +
-           number(1e3 * found.kp * found.period / found.tried_ki, 3) + " ms";
-  std::string text = "I takes the error away in about " + number(1e3 * *found.time, 3) + " ms";
+           readable(1e3 * found.kp * found.period / found.tried_ki, 3) + " ms";
+  std::string text = "I takes the error away in about " + readable(1e3 * *found.time, 3) + " ms";
   int bends = 0, in_time = 0;
   for (const BendFigures& bend : found.bends) {
     if (!std::isfinite(bend.radius)) continue;
@@ -253,9 +244,9 @@ std::string cost_text(const IntegralFigures& found) {
   if (!found.without.stable) return "; the loop is unstable even without it.";
   if (!found.with.stable) return ", but makes the loop unstable.";
   const auto margin = [](const Margins& m) {
-    return (m.gain_high ? number(decibels(*m.gain_high), 3) + " dB of gain, " : std::string()) +
-           (m.phase ? number(*m.phase * 57.29577951308232, 3) + " deg of phase, " : std::string()) +
-           "sensitivity peak " + number(m.sensitivity_peak.value_or(1.0), 3);
+    return (m.gain_high ? readable(decibels(*m.gain_high), 3) + " dB of gain, " : std::string()) +
+           (m.phase ? readable(*m.phase * 57.29577951308232, 3) + " deg of phase, " : std::string()) +
+           "sensitivity peak " + readable(m.sensitivity_peak.value_or(1.0), 3);
   };
   return ". It costs margin: " + margin(found.with) + " with it; " + margin(found.without) + " without.";
 }
@@ -289,7 +280,7 @@ Result<IntegralFigures> explain_integral(const Scenario& scenario, std::shared_p
   Result<SampledLoop> loop = linearise(scenario);
   if (!loop) return loop.error();
   if (!(loop->gains.kp > 0.0))
-    return Error{"controller.kp", number(scenario.controller.kp, 6), "what P keeps needs a P gain above 0"};
+    return Error{"controller.kp", readable(scenario.controller.kp, 6), "what P keeps needs a P gain above 0"};
   const Result<Plan> plan = make_plan(scenario, std::move(ground));
   if (!plan) return plan.error();
 

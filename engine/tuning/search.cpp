@@ -2,9 +2,9 @@
 
 #include <algorithm>
 #include <cmath>
-#include <cstdio>
 
 #include "engine/drive/drive.h"
+#include "engine/numeric/words.h"
 #include "engine/theory/margins.h"
 #include "engine/tuning/rules.h"
 #include "engine/tuning/search_space.h"
@@ -13,12 +13,6 @@ namespace lw {
 namespace {
 
 constexpr double not_driven = 1e6, not_finished = 1e3;  // breaches beyond any limit's
-
-std::string number(double value, int digits) {
-  char text[32];
-  std::snprintf(text, sizeof text, "%.*g", digits, value);
-  return text;
-}
 
 /// One limit against one candidate.
 struct Held {
@@ -37,7 +31,7 @@ std::vector<Held> held_to(const SearchLimits& limits, const Candidate& candidate
   const auto most = [&](const char* name, double value, const std::optional<double>& limit, const char* unit,
                         bool of_deviation) {
     if (limit)
-      all.push_back({name + number(value, 3) + unit + ", limit " + number(*limit, 3) + unit,
+      all.push_back({name + significant(value, 3) + unit + ", limit " + significant(*limit, 3) + unit,
                      over(value, *limit), of_deviation});
   };
   most("deviation ", 1e3 * candidate.deviation_max, limits.deviation_mm, " mm", true);
@@ -52,9 +46,9 @@ std::vector<Held> held_to(const SearchLimits& limits, const Candidate& candidate
     const double margin = std::min(high, low);
     const double missing =
         std::max(0.0, *limits.gain_margin_db - margin) / std::max(1.0, *limits.gain_margin_db);
-    all.push_back(
-        {"gain margin " + number(margin, 3) + " dB, limit " + number(*limits.gain_margin_db, 3) + " dB",
-         missing, false});
+    all.push_back({"gain margin " + significant(margin, 3) + " dB, limit " +
+                       significant(*limits.gain_margin_db, 3) + " dB",
+                   missing, false});
   }
   if (candidate.stable)
     most("sensitivity peak ", candidate.sensitivity_peak.value_or(1.0), limits.sensitivity_peak, "", false);
@@ -234,7 +228,7 @@ std::optional<Error> fault_of(const SearchSettings& settings) {
 std::string broken_limits(const SearchSettings& settings, const Candidate& candidate, int draws) {
   if (candidate.breach >= not_driven) return "it cannot be driven";
   if (candidate.finished < draws)
-    return "it does not finish: " + number(1e2 * candidate.progress, 3) + " % of the way";
+    return "it does not finish: " + significant(1e2 * candidate.progress, 3) + " % of the way";
   std::string text;
   for (const Held& one : held_to(settings.limits, candidate)) {
     if (one.breach > 0.0) text += (text.empty() ? "" : "; ") + one.text;
@@ -247,15 +241,15 @@ std::string values_text(const SearchSettings& settings, const Candidate& candida
   std::string text;
   for (std::size_t i = 0; i < settings.free.size(); ++i) {
     const Variable variable = settings.free[i].variable;
-    text += (i > 0 ? ", " : "") + std::string(name_of(variable)) + ' ' + number(candidate.values[i], 4) +
+    text += (i > 0 ? ", " : "") + std::string(name_of(variable)) + ' ' + significant(candidate.values[i], 4) +
             units[static_cast<int>(variable)];
   }
   return text;
 }
 
 std::string figures_text(const Candidate& candidate) {
-  return number(candidate.time, 4) + " s, at most " + number(1e3 * candidate.deviation_max, 3) +
-         " mm off the line, " + number(candidate.reversals_per_s, 3) + " reversals per s";
+  return significant(candidate.time, 4) + " s, at most " + significant(1e3 * candidate.deviation_max, 3) +
+         " mm off the line, " + significant(candidate.reversals_per_s, 3) + " reversals per s";
 }
 
 std::string words_of(const SearchSettings& settings, const SearchAnswer& answer, int draws) {

@@ -2,9 +2,9 @@
 
 #include <algorithm>
 #include <cmath>
-#include <cstdio>
 #include <cstdlib>
 
+#include "engine/numeric/words.h"
 #include "engine/theory/margins.h"
 
 namespace lw {
@@ -71,12 +71,6 @@ Allowed allowed(Variable variable) {
   return {0.0, 0.0, ""};
 }
 
-std::string text(double value) {
-  char digits[32];
-  std::snprintf(digits, sizeof digits, "%.6g", value);
-  return digits;
-}
-
 std::optional<Error> fault_of(const Scenario& scenario, const std::vector<FreeVariable>& free,
                               std::size_t i) {
   const FreeVariable& one = free[i];
@@ -89,10 +83,10 @@ std::optional<Error> fault_of(const Scenario& scenario, const std::vector<FreeVa
   const Allowed range = allowed(one.variable);
   for (const auto& bound : {one.low, one.high}) {
     if (bound && !(*bound >= range.low && *bound <= range.high))
-      return Error{"free", name + " = " + text(*bound), range.rule};
+      return Error{"free", name + " = " + significant(*bound, 6), range.rule};
   }
   if (one.low && one.high && !(*one.low < *one.high))
-    return Error{"free", name + " = " + text(*one.low) + " to " + text(*one.high),
+    return Error{"free", name + " = " + significant(*one.low, 6) + " to " + significant(*one.high, 6),
                  "the second is not above the first"};
   return {};
 }
@@ -102,11 +96,7 @@ bool by_square(const Axis& axis) {
   return axis.variable == Variable::ki || axis.variable == Variable::kd || axis.variable == Variable::filter;
 }
 
-double to_four_digits(double value) {
-  char digits[32];
-  std::snprintf(digits, sizeof digits, "%.4g", value);
-  return std::strtod(digits, nullptr);
-}
+double to_four_digits(double value) { return std::strtod(significant(value, 4).c_str(), nullptr); }
 
 }  // namespace
 
@@ -172,7 +162,8 @@ Result<std::vector<Axis>> axes_of(const Scenario& scenario, const std::vector<Fr
     axis.high = free[i].high.value_or(std::clamp(std::max(axis.high, own), range.low, range.high));
     if (!(axis.low < axis.high))
       return Error{"free",
-                   std::string(name_of(axis.variable)) + " = " + text(axis.low) + " to " + text(axis.high),
+                   std::string(name_of(axis.variable)) + " = " + significant(axis.low, 6) + " to " +
+                       significant(axis.high, 6),
                    "the second is not above the first"};
     axes.push_back(axis);
   }

@@ -1,32 +1,27 @@
 #include "engine/tuning/trial.h"
 
 #include <algorithm>
-#include <cstdio>
 
+#include "engine/numeric/words.h"
 #include "engine/tuning/rules.h"
 
 namespace lw {
 namespace {
 
-std::string text(const char* format, double value) {
-  char buffer[64];
-  std::snprintf(buffer, sizeof buffer, format, value);
-  return buffer;
-}
-
 std::string against_by_loop(const Margins& margins) {
   if (margins.stable) {
     if (margins.gain_high && *margins.gain_high < least_gain_margin)
-      return "gain margin of only " + text("%.1f dB", decibels(*margins.gain_high));
+      return "gain margin of only " + formatted("%.1f dB", decibels(*margins.gain_high));
     if (margins.gain_low && *margins.gain_low > 1.0 / least_gain_margin)
-      return "swings up when the loop gain falls by only " + text("%.1f dB", -decibels(*margins.gain_low));
+      return "swings up when the loop gain falls by only " +
+             formatted("%.1f dB", -decibels(*margins.gain_low));
     return "";
   }
   std::string words = "the loop on the straight is not stable";
   if (margins.gain_high && *margins.gain_high < 1.0)
-    words += "; its gain would have to come down by " + text("%.1f dB", -decibels(*margins.gain_high));
+    words += "; its gain would have to come down by " + formatted("%.1f dB", -decibels(*margins.gain_high));
   else if (margins.gain_low && *margins.gain_low > 1.0)
-    words += "; its gain would have to go up by " + text("%.1f dB", decibels(*margins.gain_low));
+    words += "; its gain would have to go up by " + formatted("%.1f dB", decibels(*margins.gain_low));
   else
     words += " at any loop gain";
   return words;
@@ -34,9 +29,9 @@ std::string against_by_loop(const Margins& margins) {
 
 std::string near_edge_of(const Trial& trial) {
   if (trial.margins.sensitivity_peak && *trial.margins.sensitivity_peak > sensible_sensitivity)
-    return "sensitivity peak " + text("%.2f", *trial.margins.sensitivity_peak) + ", above 2";
+    return "sensitivity peak " + formatted("%.2f", *trial.margins.sensitivity_peak) + ", above 2";
   if (trial.drive.saturated > much_saturation)
-    return "steer saturated over " + text("%.0f %%", 1e2 * trial.drive.saturated) + " of the drive";
+    return "steer saturated over " + formatted("%.0f %%", 1e2 * trial.drive.saturated) + " of the drive";
   return "";
 }
 
@@ -100,7 +95,7 @@ Choice recommended(const std::vector<Trial>& trials) {
   if (well_inside.empty()) {
     const std::size_t best = least(trials, left, peak_of);
     return {best, trials[best].name + ": the lowest sensitivity peak (" +
-                      text("%.2f", peak_of(trials[best])) + ") of the " +
+                      formatted("%.2f", peak_of(trials[best])) + ") of the " +
                       count_text(left.size(), trials.size()) +
                       " that are stable and get round; none is well inside the stable range."};
   }
@@ -112,13 +107,13 @@ Choice recommended(const std::vector<Trial>& trials) {
   }
   const std::size_t best = least(trials, level, peak_of);
   std::string why = trials[best].name + ": " + (level.size() > 1 ? "within 5 % of " : "") +
-                    "the least rms deviation (" + text("%.2f mm", 1e3 * rms(trials[best])) + ") of the " +
-                    count_text(well_inside.size(), trials.size()) +
+                    "the least rms deviation (" + formatted("%.2f mm", 1e3 * rms(trials[best])) +
+                    ") of the " + count_text(well_inside.size(), trials.size()) +
                     " that get round and stay well inside the stable range";
   if (level.size() > 1) why += ", and the lowest sensitivity peak of those";
-  why += " (peak " + text("%.2f", peak_of(trials[best]));
+  why += " (peak " + formatted("%.2f", peak_of(trials[best]));
   if (trials[best].margins.gain_high)
-    why += ", gain margin " + text("%.1f dB", decibels(*trials[best].margins.gain_high));
+    why += ", gain margin " + formatted("%.1f dB", decibels(*trials[best].margins.gain_high));
   return {best, why + ")."};
 }
 

@@ -1,8 +1,8 @@
 #include "engine/tuning/tune.h"
 
 #include <cmath>
-#include <cstdio>
 
+#include "engine/numeric/words.h"
 #include "engine/theory/roots.h"
 #include "engine/tuning/rules.h"
 
@@ -11,13 +11,6 @@ namespace {
 
 constexpr const char* habit_source = "common practice, no source";
 
-template <class... Value>
-std::string text(const char* format, Value... value) {
-  char buffer[300];
-  std::snprintf(buffer, sizeof buffer, format, value...);
-  return buffer;
-}
-
 double percent(double factor) { return 1e2 * (factor - 1.0); }
 
 std::vector<std::string> relay_words(const RelayStudy& study, const Straight& straight,
@@ -25,7 +18,7 @@ std::vector<std::string> relay_words(const RelayStudy& study, const Straight& st
   const RelayFound& found = study.ideal;
   if (!found.reading) return {"The relay experiment gives nothing: " + found.reason + "."};
   const RelayReading& reading = *found.reading;
-  std::vector<std::string> words{text(
+  std::vector<std::string> words{formatted(
       "A relay of +-%.3g %% steer with hysteresis %.3g swings %.3g mm every %.1f ms: Kp %.4g by its formula.",
       1e2 * found.size, found.hysteresis, 1e3 * found.amplitude, 1e3 * reading.period, reading.gain)};
   if (!theory.gain) {
@@ -33,25 +26,25 @@ std::vector<std::string> relay_words(const RelayStudy& study, const Straight& st
     return words;
   }
   const RelayParts& parts = study.parts;
-  words.push_back(text("Theory has Kp %.4g and %.1f ms: the relay's gain is %+.1f %%, its period %+.1f %%.",
-                       *theory.gain, 1e3 * *theory.period, percent(reading.gain / *theory.gain),
-                       percent(reading.period / *theory.period)));
+  words.push_back(formatted(
+      "Theory has Kp %.4g and %.1f ms: the relay's gain is %+.1f %%, its period %+.1f %%.", *theory.gain,
+      1e3 * *theory.period, percent(reading.gain / *theory.gain), percent(reading.period / *theory.period)));
   const double wait = 0.5 * straight.loop.period / reading.period * 360.0;
+  words.push_back(formatted(
+      "Hysteresis and the wait for the next loop (%.1f deg in the mean) make the relay switch %.1f deg "
+      "late, so "
+      "that it swings more slowly than the critical loop, whose phase changes little with frequency: "
+      "%+.1f %%.",
+      wait, reading.late * 180.0 / pi, percent(parts.frequency)));
   words.push_back(
-      text("Hysteresis and the wait for the next loop (%.1f deg in the mean) make the relay switch %.1f deg "
-           "late, so "
-           "that it swings more slowly than the critical loop, whose phase changes little with frequency: "
-           "%+.1f %%.",
-           wait, reading.late * 180.0 / pi, percent(parts.frequency)));
-  words.push_back(
-      text("The sensors' slope over the swing: %+.1f %%. The formula counts the square wave's first "
-           "harmonic alone (the describing-function error): %+.1f %%.",
-           percent(parts.slope), percent(parts.formula)));
+      formatted("The sensors' slope over the swing: %+.1f %%. The formula counts the square wave's first "
+                "harmonic alone (the describing-function error): %+.1f %%.",
+                percent(parts.slope), percent(parts.formula)));
   if (reading.gain < *theory.gain)
     words.push_back("Settings worked out from it are on the slow side, not on the dangerous one.");
   if (study.as_it_is.reading)
-    words.push_back(text("On the vehicle as it is: Kp %.4g, period %.1f ms.", study.as_it_is.reading->gain,
-                         1e3 * study.as_it_is.reading->period));
+    words.push_back(formatted("On the vehicle as it is: Kp %.4g, period %.1f ms.",
+                              study.as_it_is.reading->gain, 1e3 * study.as_it_is.reading->period));
   else
     words.push_back("On the vehicle as it is it gives nothing: " + study.as_it_is.reason + ".");
   return words;

@@ -13,14 +13,6 @@ const Scenario& usual_scenario() {
   return usual;
 }
 
-RowLabel label_of(const FieldInfo& info, const std::string& path) {
-  RowLabel label;
-  label.path = path;
-  label.label = info.label;
-  label.meaning = info.meaning;
-  return label;
-}
-
 NumberRow row_of(const FieldInfo& info, const std::string& path, double usual, bool whole = false) {
   return {path, info.label, info.unit, info.meaning, info.range, info.grain, usual, whole};
 }
@@ -123,6 +115,14 @@ struct FieldRow {
 };
 
 }  // namespace
+
+RowLabel label_of(const FieldInfo& info, const std::string& path) {
+  RowLabel label;
+  label.path = path;
+  label.label = info.label;
+  label.meaning = info.meaning;
+  return label;
+}
 
 template <class T>
 const T* usual_field(std::string_view section, std::string_view key) {

@@ -10,6 +10,9 @@ namespace lw::panel {
 /// The fields that stay at hand above all steps and are left out of them (quick.h).
 bool is_quick(const FieldInfo& info);
 
+/// Name and help of a field's row; `path` as in the scenario ("vehicle.wheel_left_mm").
+RowLabel label_of(const FieldInfo& info, const std::string& path);
+
 /// Rows for all fields of one section ("vehicle"), in the order of the list.
 void section_rows(Rows& rows, std::string_view section);
 

@@ -9,14 +9,6 @@
 namespace lw::panel {
 namespace {
 
-RowLabel label_of(const FieldInfo& info, const std::string& path) {
-  RowLabel label;
-  label.path = path;
-  label.label = info.label;
-  label.meaning = info.meaning;
-  return label;
-}
-
 std::string name_of_field(const NumberField& field) {
   const std::size_t bracket = field.path.find('[');
   const std::string entry = bracket == std::string::npos ? "" : " " + field.path.substr(bracket);
